@@ -1,0 +1,133 @@
+import { emptyAirState } from './air.ts'
+import { ascend, gasVolume, type AscendingBalloon } from './ascent.ts'
+import { type Column } from './column.ts'
+import { descend } from './descent.ts'
+import { dragCurve, type DragChoice } from './dragCurves.ts'
+import { wrapLongitude } from './earth.ts'
+import { fill, type Fill } from './fill.ts'
+import { sphereDiameter, sphereVolume, type Gas } from './gas.ts'
+import { NotFlyable } from './notFlyable.ts'
+import { dragArea, type Parachute } from './parachute.ts'
+import { type PathRecorder, type Whereabouts } from './path.ts'
+
+/** Changes whenever the same plan in the same air would give another answer; stored with every run. */
+export const MODEL_VERSION = '1.0'
+
+/** Everything about a flight but the air. SI; angles in radians. */
+export interface FlightPlan {
+  launch: {
+    latitude: number
+    longitude: number
+    /** Geometric m above mean sea level */
+    altitude: number
+    /** Seconds since 1970 UTC */
+    time: number
+  }
+  balloon: {
+    mass: number
+    ratedBurstDiameter: number
+    /** Share of the balloon's mass that stays on the line after burst, 0 to 1 */
+    shareLeftOnLine: number
+  }
+  gas: Gas
+  /** Pull at the neck of the filled balloon with nothing hung on it, kg */
+  neckLift: number
+  /** Everything hung below the neck: instruments, line, parachute; kg */
+  payloadMass: number
+  parachute: Parachute
+  drag: DragChoice
+  /** Geometric m above mean sea level */
+  landingAltitude: number
+}
+
+/** A predicted flight. SI; angles in radians, longitudes in [-π, π). */
+export interface Flight {
+  fill: Fill
+  ascent: {
+    releaseRate: number
+    meanRate: number
+    duration: number
+    lowestReynolds: number
+    highestReynolds: number
+  }
+  burst: Whereabouts & { pressure: number; temperature: number; diameter: number }
+  descent: { duration: number; peakSpeed: number; dragArea: number }
+  landing: Whereabouts & { speed: number }
+}
+
+/**
+ * Flies a plan through one column of air: fill, ascent, burst, descent, landing.
+ * @throws NotFlyable with the number that stands in the way.
+ */
+export function fly(plan: FlightPlan, column: Column, recorder?: PathRecorder): Flight {
+  const { balloon, gas, neckLift, payloadMass, launch, landingAltitude } = plan
+  if (!(neckLift > payloadMass)) {
+    throw new NotFlyable({ kind: 'no-free-lift', neckLift, payloadMass })
+  }
+
+  const air = emptyAirState()
+  column.air.sampleAltitude(launch.altitude, air)
+  const filled = fill(neckLift, balloon.mass, payloadMass, gas, air)
+  const ascending: AscendingBalloon = {
+    moles: filled.moles,
+    mass: balloon.mass + payloadMass + filled.gasMass,
+    gasMass: filled.gasMass,
+    temperatureOffset: gas.temperatureOffset,
+    burstVolume: sphereVolume(balloon.ratedBurstDiameter),
+    drag: dragCurve(plan.drag),
+  }
+  const releaseVolume = gasVolume(ascending, air.temperature, air.pressure)
+  const fullestVolume = Math.max(filled.volume, releaseVolume)
+  if (!(ascending.burstVolume > fullestVolume)) {
+    throw new NotFlyable({
+      kind: 'full-at-fill',
+      ratedBurstDiameter: balloon.ratedBurstDiameter,
+      fillDiameter: sphereDiameter(fullestVolume),
+    })
+  }
+
+  const at: Whereabouts = {
+    latitude: launch.latitude,
+    longitude: launch.longitude,
+    altitude: launch.altitude,
+    elapsed: 0,
+  }
+  const { burstRate, ...rates } = ascend(ascending, column, at, recorder)
+  const burst = { ...at, longitude: wrapLongitude(at.longitude) }
+  if (!(burst.altitude > landingAltitude)) {
+    throw new NotFlyable({
+      kind: 'falls-past-landing',
+      landingAltitude,
+      burstAltitude: burst.altitude,
+    })
+  }
+
+  column.air.sampleAltitude(burst.altitude, air)
+  const { pressure, temperature } = air
+  const fallingMass = payloadMass + balloon.shareLeftOnLine * balloon.mass
+  const falling = { mass: fallingMass, dragArea: dragArea(plan.parachute, fallingMass) }
+  const { peakSpeed, landingSpeed } = descend(
+    falling,
+    burstRate,
+    landingAltitude,
+    column,
+    at,
+    recorder,
+  )
+
+  return {
+    fill: filled,
+    ascent: {
+      ...rates,
+      duration: burst.elapsed,
+      meanRate: (burst.altitude - launch.altitude) / burst.elapsed,
+    },
+    burst: { ...burst, pressure, temperature, diameter: balloon.ratedBurstDiameter },
+    descent: {
+      duration: at.elapsed - burst.elapsed,
+      peakSpeed,
+      dragArea: falling.dragArea,
+    },
+    landing: { ...at, longitude: wrapLongitude(at.longitude), speed: landingSpeed },
+  }
+}
