@@ -55,6 +55,7 @@ export default tseslint.config(
   {
     files: ['.config/**'],
     ...tseslint.configs.disableTypeChecked,
+    languageOptions: { globals: { URL: 'readonly' } },
     rules: { ...tseslint.configs.disableTypeChecked.rules, 'no-restricted-syntax': 'off' },
   },
   { files: ['**/*.js'], ...tseslint.configs.disableTypeChecked },
