@@ -64,11 +64,12 @@ test('a file that is no database is refused', () => {
 
 test('what throws half way stores nothing', () => {
   const store = new Store(join(folder(), 'a.sqlite'), MIGRATIONS)
-  expect(() => { store.atomically(() => {
+  expect(() => {
+    store.atomically(() => {
       store.flights.insert(flight('one'))
       store.flights.insert(flight('one'))
-    }); },
-  ).toThrow('UNIQUE')
+    })
+  }).toThrow('UNIQUE')
   expect(store.flights.count()).toBe(0)
   store.close()
 })
