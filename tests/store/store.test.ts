@@ -62,14 +62,18 @@ test('a file that is no database is refused', () => {
   expect(() => new Store(file, MIGRATIONS)).toThrow('not a database')
 })
 
-test('what throws half way stores nothing', () => {
+test('of writes committed together, one that throws half way is undone alone', async () => {
   const store = new Store(join(folder(), 'a.sqlite'), MIGRATIONS)
-  expect(() => {
-    store.atomically(() => {
-      store.flights.insert(flight('one'))
-      store.flights.insert(flight('one'))
+  const insert = (...ids: string[]) =>
+    store.commit(() => {
+      for (const id of ids) store.flights.insert(flight(id))
     })
-  }).toThrow('UNIQUE')
-  expect(store.flights.count()).toBe(0)
+  const results = await Promise.allSettled([insert('a', 'b'), insert('c', 'c'), insert('d')])
+  expect(results.map(({ status }) => status)).toEqual(['fulfilled', 'rejected', 'fulfilled'])
+  const { rows } = store.flights.list(
+    { launchFrom: null, launchTo: null, title: null },
+    { limit: 9, before: null },
+  )
+  expect(rows.map(({ id }) => id)).toEqual(['d', 'b', 'a'])
   store.close()
 })
