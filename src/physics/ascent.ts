@@ -1,12 +1,12 @@
 import { emptyAirState, type AirState } from './air.ts'
-import { type Column } from './column.ts'
+import { type Column, type WindDeparture } from './column.ts'
 import { CEILING, MOLAR_GAS_CONSTANT } from './constants.ts'
 import { type DragCurve } from './dragCurves.ts'
-import { drift, gravity } from './earth.ts'
+import { drift, driftAlong, gravity } from './earth.ts'
 import { type Fill } from './fill.ts'
 import { sphereDiameter } from './gas.ts'
 import { NotFlyable } from './notFlyable.ts'
-import { recordedStep, type PathRecorder, type Whereabouts } from './path.ts'
+import { recordStep, type PathRecorder, type Phase, type Whereabouts } from './path.ts'
 
 /** A balloon on its way up, SI. */
 export interface AscendingBalloon {
@@ -18,6 +18,8 @@ export interface AscendingBalloon {
   /** Volume at which the envelope bursts, m³ */
   burstVolume: number
   drag: DragCurve
+  /** Factor on the drag curve's coefficient */
+  dragFactor: number
 }
 
 /** How an ascent ended, SI. The whereabouts passed in stand at the burst. */
@@ -28,6 +30,10 @@ export interface AscentEnd {
   burstRate: number
   lowestReynolds: number
   highestReynolds: number
+}
+
+export function emptyAscentEnd(): AscentEnd {
+  return { releaseRate: 0, burstRate: 0, lowestReynolds: 0, highestReynolds: 0 }
 }
 
 /** Gas volume in m³ in air of a temperature in K and a pressure in Pa. */
@@ -51,7 +57,8 @@ function risingReynolds(
   const lift = (air.density * volume - balloon.mass) * gravity
   if (!(lift > 0)) return 0
   // ½·ρ·Cd·(πD²/4)·w² = F with w = Re·μ/(ρD) leaves Cd·Re² = 8·F·ρ/(π·μ²).
-  return balloon.drag.reynolds((8 * lift * air.density) / (Math.PI * air.viscosity * air.viscosity))
+  const best = (8 * lift * air.density) / (Math.PI * air.viscosity * air.viscosity)
+  return balloon.drag.reynolds(best / balloon.dragFactor)
 }
 
 function speed(reynolds: number, air: AirState, volume: number): number {
@@ -69,72 +76,157 @@ const pointAir = emptyAirState()
 
 /**
  * Flies a balloon from `at` up to its burst, quasi-steadily: in one column the ascent is the quadrature
- * dt = dz/w(z) with drift wind·dt. Moves `at` to the burst.
+ * dt = dz/w(z) with drift wind·dt. Moves `at` to the burst and fills `end`; allocates nothing without a
+ * recorder.
  * @throws NotFlyable where it stops rising or has not burst at the ceiling.
  */
 export function ascend(
   balloon: AscendingBalloon,
   column: Column,
   at: Whereabouts,
+  end: AscentEnd,
   recorder?: PathRecorder,
-): AscentEnd {
-  const { air } = column
-  let lowestReynolds = Infinity
-  let highestReynolds = 0
-  air.sampleAltitude(at.altitude, pointAir)
-  const releaseRate = riseRate(balloon, pointAir, at.altitude)
-  recorder?.record(at, releaseRate, 'ascent')
+  departure?: WindDeparture,
+): void {
+  rise.begin(balloon, column, at, departure)
+  end.releaseRate = rise.rateHere()
+  recorder?.record(at, end.releaseRate, 'ascent')
 
+  const { edgeVolumePerMole } = column.rise(balloon.temperatureOffset)
+  const burstVolumePerMole = balloon.burstVolume / balloon.fill.moles
+  const { count } = column
   let slab = column.slabAt(at.altitude)
-  let previousRate = releaseRate
-  let burst = false
-  while (!burst) {
-    if (slab >= column.count) throw noBurst(balloon, column)
-    const bottom = at.altitude
-    let top = column.altitude(slab + 1)
-    if (recorder) top = Math.min(top, bottom + recordedStep(column.windRange[slab], previousRate))
-    if (reachesBurst(balloon, column, slab, top)) {
-      top = burstAltitude(balloon, column, bottom, top)
-      burst = true
+  let burstSlab = slab
+  while (burstSlab < count && edgeVolumePerMole[burstSlab + 1] < burstVolumePerMole) burstSlab++
+
+  if (recorder) {
+    for (; slab < burstSlab; slab++) {
+      rise.recordedStep(slab, column.altitude(slab + 1), recorder, 'ascent')
     }
-    if (top > bottom) {
-      column.mean(bottom, top, slabAir)
-      const volume = gasVolume(balloon, slabAir.temperature, slabAir.pressure)
-      const reynolds = risingReynolds(balloon, slabAir, volume, gravity((bottom + top) / 2))
-      if (reynolds === 0) throw stopsRising(balloon, column, bottom)
-      if (reynolds < lowestReynolds) lowestReynolds = reynolds
-      if (reynolds > highestReynolds) highestReynolds = reynolds
-      previousRate = speed(reynolds, slabAir, volume)
-      const duration = (top - bottom) / previousRate
-      drift(at, (bottom + top) / 2, slabAir.windEast * duration, slabAir.windNorth * duration)
-      at.elapsed += duration
-      at.altitude = top
+  } else if (slab < burstSlab) {
+    rise.step(slab, column.altitude(slab + 1))
+    rise.wholeSlabs(slab + 1, burstSlab)
+  }
+  if (burstSlab === count) throw noBurst(balloon, column)
+
+  const burst = burstAltitude(balloon, column, at.altitude, column.altitude(burstSlab + 1))
+  if (recorder) rise.recordedStep(burstSlab, burst, recorder, 'burst')
+  else if (burst > at.altitude) rise.step(burstSlab, burst)
+  end.burstRate = rise.rateHere()
+  if (!(end.burstRate > 0)) throw stopsRising(balloon, column, at.altitude)
+  end.lowestReynolds = rise.lowestReynolds
+  end.highestReynolds = rise.highestReynolds
+}
+
+/** Series over the slabs of a column, kept for the next ascent. */
+let best = new Float64Array(0)
+let reynolds = new Float64Array(0)
+let drifts = { altitude: best, east: best, north: best }
+
+/** The state of a rising balloon, stepped up through a column. */
+class Rise {
+  lowestReynolds = Infinity
+  highestReynolds = 0
+  private balloon!: AscendingBalloon
+  private column!: Column
+  private at!: Whereabouts
+  private departure: WindDeparture | undefined
+
+  begin(
+    balloon: AscendingBalloon,
+    column: Column,
+    at: Whereabouts,
+    departure: WindDeparture | undefined,
+  ): void {
+    this.lowestReynolds = Infinity
+    this.highestReynolds = 0
+    this.balloon = balloon
+    this.column = column
+    this.at = at
+    this.departure = departure
+    if (best.length < column.count) {
+      best = new Float64Array(column.count)
+      reynolds = new Float64Array(column.count)
+      drifts = {
+        altitude: new Float64Array(column.count),
+        east: new Float64Array(column.count),
+        north: new Float64Array(column.count),
+      }
     }
-    if (recorder && !burst) {
-      air.sampleAltitude(top, pointAir)
-      recorder.record(at, riseRate(balloon, pointAir, top), 'ascent')
-    }
-    if (top === column.altitude(slab + 1)) slab++
   }
 
-  air.sampleAltitude(at.altitude, pointAir)
-  const burstRate = riseRate(balloon, pointAir, at.altitude)
-  if (!(burstRate > 0)) throw stopsRising(balloon, column, at.altitude)
-  recorder?.record(at, burstRate, 'burst')
-  return { releaseRate, burstRate, lowestReynolds, highestReynolds }
+  /** Steady rate of ascent here, m/s. */
+  rateHere(): number {
+    this.column.air.sampleAltitude(this.at.altitude, pointAir)
+    return riseRate(this.balloon, pointAir, this.at.altitude)
+  }
+
+  /** Up to `top` m within one slab, in the mean air of the step; returns the rate of ascent, m/s. */
+  step(slab: number, top: number): number {
+    const { balloon, column, at, departure } = this
+    const bottom = at.altitude
+    const middle = (bottom + top) / 2
+    column.mean(bottom, top, slabAir)
+    const volume = gasVolume(balloon, slabAir.temperature, slabAir.pressure)
+    const reynoldsHere = risingReynolds(balloon, slabAir, volume, gravity(middle))
+    if (reynoldsHere === 0) throw stopsRising(balloon, column, bottom)
+    if (reynoldsHere < this.lowestReynolds) this.lowestReynolds = reynoldsHere
+    if (reynoldsHere > this.highestReynolds) this.highestReynolds = reynoldsHere
+    const rate = speed(reynoldsHere, slabAir, volume)
+    const duration = (top - bottom) / rate
+    const east = slabAir.windEast + (departure ? departure.east[slab] : 0)
+    const north = slabAir.windNorth + (departure ? departure.north[slab] : 0)
+    drift(at, middle, east * duration, north * duration)
+    at.elapsed += duration
+    at.altitude = top
+    return rate
+  }
+
+  /** As `step`, telling a recorder of the way; the step ends in `phase`. */
+  recordedStep(slab: number, top: number, recorder: PathRecorder, phase: Phase): void {
+    const { at, column } = this
+    const from = { ...at }
+    const fromRate = this.rateHere()
+    this.step(slab, top)
+    recordStep(recorder, column.air, from, fromRate, at, this.rateHere(), phase)
+  }
+
+  /** Through slabs [first, end), all of each: the same as a step through each, from the tables. */
+  wholeSlabs(first: number, end: number): void {
+    const { balloon, column, at, departure } = this
+    const { fill, mass, dragFactor } = balloon
+    const { displacedPerMole, bestPerLift, slowness } = column.rise(balloon.temperatureOffset)
+    const { windEast, windNorth } = column
+    for (let slab = first; slab < end; slab++) {
+      const lift = fill.moles * displacedPerMole[slab] - mass
+      if (!(lift > 0)) throw stopsRising(balloon, column, column.altitude(slab))
+      best[slab] = (lift * bestPerLift[slab]) / dragFactor
+    }
+    balloon.drag.reynoldsOfAll(best, reynolds, first, end)
+
+    const { altitude, east, north } = drifts
+    const cubeRootMoles = Math.cbrt(fill.moles)
+    let { lowestReynolds, highestReynolds } = this
+    let elapsed = 0
+    for (let slab = first; slab < end; slab++) {
+      if (reynolds[slab] < lowestReynolds) lowestReynolds = reynolds[slab]
+      if (reynolds[slab] > highestReynolds) highestReynolds = reynolds[slab]
+      const duration = (cubeRootMoles * slowness[slab]) / reynolds[slab]
+      elapsed += duration
+      altitude[slab] = column.altitude(slab) + column.thickness / 2
+      east[slab] = (windEast[slab] + (departure ? departure.east[slab] : 0)) * duration
+      north[slab] = (windNorth[slab] + (departure ? departure.north[slab] : 0)) * duration
+    }
+    driftAlong(at, first, end, altitude, east, north)
+    this.lowestReynolds = lowestReynolds
+    this.highestReynolds = highestReynolds
+    at.elapsed += elapsed
+    at.altitude = column.altitude(end)
+  }
 }
 
-function reachesBurst(
-  balloon: AscendingBalloon,
-  column: Column,
-  slab: number,
-  top: number,
-): boolean {
-  if (top !== column.altitude(slab + 1))
-    return volumeAt(balloon, column, top) >= balloon.burstVolume
-  const volume = gasVolume(balloon, column.edgeTemperature[slab + 1], column.edgePressure[slab + 1])
-  return volume >= balloon.burstVolume
-}
+/** One for all ascents, which never run at the same time. */
+const rise = new Rise()
 
 function volumeAt(balloon: AscendingBalloon, column: Column, altitude: number): number {
   column.air.sampleAltitude(altitude, pointAir)
@@ -187,12 +279,10 @@ function noBurst(balloon: AscendingBalloon, column: Column): NotFlyable {
 
 function stopsRising(balloon: AscendingBalloon, column: Column, altitude: number): NotFlyable {
   // Per mole the displaced air weighs R·(T+ΔT)·ρ/p; where that is least, the gas must still carry all.
+  const { edgeVolumePerMole } = column.rise(balloon.temperatureOffset)
   let leastDisplaced = Infinity
   for (let edge = column.slabAt(altitude); edge <= column.count; edge++) {
-    const volumePerMole =
-      (MOLAR_GAS_CONSTANT * (column.edgeTemperature[edge] + balloon.temperatureOffset)) /
-      column.edgePressure[edge]
-    leastDisplaced = Math.min(leastDisplaced, volumePerMole * column.edgeDensity[edge])
+    leastDisplaced = Math.min(leastDisplaced, edgeVolumePerMole[edge] * column.edgeDensity[edge])
   }
   const { moles, gasMass, grossLift, neckLift } = balloon.fill
   const liftPerMole = leastDisplaced - gasMass / moles

@@ -1,6 +1,7 @@
 import { emptyAirState, viscosity, type AirState, type ColumnAir } from './air.ts'
 import { CEILING } from './constants.ts'
 import { gravity } from './earth.ts'
+import { RiseTable } from './riseTable.ts'
 
 /** Altitude of the lowest slab's bottom, m: below every shore and salt lake. */
 const COLUMN_BASE = -1000
@@ -10,6 +11,17 @@ const SLAB_THICKNESS = 400
 
 /** Nodes of the two-point Gauss-Legendre rule on [0, 1]. Abramowitz and Stegun, table 25.4. */
 const GAUSS = [0.5 - Math.sqrt(1 / 12), 0.5 + Math.sqrt(1 / 12)] as const
+
+interface MeanPart extends AirState {
+  from: number
+  to: number
+}
+
+/** A departure from a column's wind, m/s, held over each slab: one value for each. */
+export interface WindDeparture {
+  readonly east: Float64Array
+  readonly north: Float64Array
+}
 
 /**
  * One column of air tabulated once, to be flown in many times. It is cut into slabs of equal
@@ -30,10 +42,14 @@ export class Column {
   /** A third of the way down from each slab's top, where the descent looks: count values. */
   readonly thirdDensity: Float64Array
   readonly thirdGravity: Float64Array
-  /** Greatest difference of wind within each slab, m/s. */
-  readonly windRange: Float64Array
+  /** Mean wind over each slab, m/s: count values. */
+  readonly windEast: Float64Array
+  readonly windNorth: Float64Array
 
   private readonly means: Float64Array
+  /** The part of each slab asked for last: many flights leave from, or land at, one altitude. */
+  private readonly parts: (MeanPart | undefined)[]
+  private riseTable: RiseTable | undefined
 
   constructor(air: ColumnAir, thickness = SLAB_THICKNESS) {
     this.air = air
@@ -46,8 +62,10 @@ export class Column {
     this.edgeGravity = new Float64Array(count + 1)
     this.thirdDensity = new Float64Array(count)
     this.thirdGravity = new Float64Array(count)
-    this.windRange = new Float64Array(count)
-    this.means = new Float64Array(count * 6)
+    this.windEast = new Float64Array(count)
+    this.windNorth = new Float64Array(count)
+    this.means = new Float64Array(count * 4)
+    this.parts = Array<undefined>(count).fill(undefined)
 
     const state = emptyAirState()
     for (let edge = 0; edge <= count; edge++) {
@@ -62,20 +80,19 @@ export class Column {
       air.sampleAltitude(third, state)
       this.thirdDensity[slab] = state.density
       this.thirdGravity[slab] = gravity(third)
-      this.windRange[slab] = windRange(air, this.altitude(slab), this.altitude(slab + 1))
       meanAir(air, this.altitude(slab), this.altitude(slab + 1), state)
-      this.means.set(
-        [
-          state.pressure,
-          state.temperature,
-          state.density,
-          state.viscosity,
-          state.windEast,
-          state.windNorth,
-        ],
-        slab * 6,
-      )
+      this.means.set([state.pressure, state.temperature, state.density, state.viscosity], slab * 4)
+      this.windEast[slab] = state.windEast
+      this.windNorth[slab] = state.windNorth
     }
+  }
+
+  /** What an ascent of gas warmer than the air by `temperatureOffset` K needs of this air. */
+  rise(temperatureOffset: number): RiseTable {
+    if (this.riseTable?.temperatureOffset !== temperatureOffset) {
+      this.riseTable = new RiseTable(this, temperatureOffset)
+    }
+    return this.riseTable
   }
 
   /** Altitude of an edge, m. */
@@ -97,18 +114,33 @@ export class Column {
   mean(from: number, to: number, out: AirState): void {
     const slab = this.slabAt(from)
     if (from !== this.altitude(slab) || to !== this.altitude(slab + 1)) {
-      meanAir(this.air, from, to, out)
+      const part = (this.parts[slab] ??= { from, to: from, ...emptyAirState() })
+      if (part.from !== from || part.to !== to) {
+        meanAir(this.air, from, to, part)
+        part.from = from
+        part.to = to
+      }
+      copyAir(part, out)
       return
     }
     const { means } = this
-    const at = slab * 6
+    const at = slab * 4
     out.pressure = means[at]
     out.temperature = means[at + 1]
     out.density = means[at + 2]
     out.viscosity = means[at + 3]
-    out.windEast = means[at + 4]
-    out.windNorth = means[at + 5]
+    out.windEast = this.windEast[slab]
+    out.windNorth = this.windNorth[slab]
   }
+}
+
+function copyAir(from: AirState, to: AirState): void {
+  to.pressure = from.pressure
+  to.temperature = from.temperature
+  to.density = from.density
+  to.viscosity = from.viscosity
+  to.windEast = from.windEast
+  to.windNorth = from.windNorth
 }
 
 const node = emptyAirState()
@@ -148,22 +180,8 @@ function meanAir(air: ColumnAir, from: number, to: number, out: AirState): void 
   out.windNorth = windNorth
 }
 
-/** Greatest difference of wind, m/s, between the bottom, the top and the breaks of [from, to] m. */
-function windRange(air: ColumnAir, from: number, to: number): number {
-  const inside = air.breakAltitudes.filter((altitude) => altitude > from && altitude < to)
-  let [west, east, south, north] = [Infinity, -Infinity, Infinity, -Infinity]
-  for (const altitude of [from, ...inside, to]) {
-    air.sampleAltitude(altitude, node)
-    west = Math.min(west, node.windEast)
-    east = Math.max(east, node.windEast)
-    south = Math.min(south, node.windNorth)
-    north = Math.max(north, node.windNorth)
-  }
-  return Math.hypot(east - west, north - south)
-}
-
 /** Index of the first of ascending `values` above `value`. */
-function firstAbove(values: Float64Array, value: number): number {
+export function firstAbove(values: Float64Array, value: number): number {
   let low = 0
   let high = values.length
   while (low < high) {

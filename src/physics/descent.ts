@@ -1,7 +1,7 @@
 import { emptyAirState } from './air.ts'
-import { type Column } from './column.ts'
-import { drift, gravity } from './earth.ts'
-import { recordedStep, type PathRecorder, type Whereabouts } from './path.ts'
+import { type Column, type WindDeparture } from './column.ts'
+import { drift, driftAlong, gravity } from './earth.ts'
+import { recordStep, type PathRecorder, type Whereabouts } from './path.ts'
 
 /** What comes down after the burst, SI. */
 export interface FallingLoad {
@@ -17,6 +17,10 @@ export interface DescentEnd {
   landingSpeed: number
 }
 
+export function emptyDescentEnd(): DescentEnd {
+  return { peakSpeed: 0, landingSpeed: 0 }
+}
+
 /** Steps in which the free fall after burst is taken. */
 const OPENING_STEPS = 10
 
@@ -26,7 +30,8 @@ const pointAir = emptyAirState()
 
 /**
  * Brings a load down from its burst at `at`, where it still rises at `burstRate` m/s, to the landing
- * altitude in m, which must lie below. Moves `at` to the landing.
+ * altitude in m, which must lie below. Moves `at` to the landing and fills `end`; allocates nothing
+ * without a recorder.
  *
  * Downwards, q = w² obeys the linear equation dq/ds = 2g − k·q with k = ρ·Cd·A/m. It is stepped with
  * the two-stage Radau IIA method, which takes the free fall and the stiff, settled descent near the
@@ -38,10 +43,12 @@ export function descend(
   landingAltitude: number,
   column: Column,
   at: Whereabouts,
+  end: DescentEnd,
   recorder?: PathRecorder,
-): DescentEnd {
+  departure?: WindDeparture,
+): void {
   coast(load, burstRate, column, at)
-  const fall = new Fall(load, column, at)
+  fall.begin(load, column, at, departure)
   recorder?.record(at, 0, 'descent')
 
   // √q starts from nothing, so the first slabs are stepped in σ = √s, in which the time is smooth.
@@ -54,14 +61,22 @@ export function descend(
     recorder?.record(at, -fall.speed, to > landingAltitude ? 'descent' : 'landing')
   }
 
+  if (!recorder && at.altitude > landingAltitude) {
+    fall.wholeSlabs(column.slabBelow(at.altitude), column.slabAt(landingAltitude))
+  }
   while (at.altitude > landingAltitude) {
     const slab = column.slabBelow(at.altitude)
-    let to = Math.max(landingAltitude, column.altitude(slab))
-    if (recorder) to = Math.max(to, at.altitude - recordedStep(column.windRange[slab], fall.speed))
+    const to = Math.max(landingAltitude, column.altitude(slab))
+    const from = { ...at }
+    const fromSpeed = fall.speed
     fall.slabStep(slab, to)
-    recorder?.record(at, -fall.speed, to > landingAltitude ? 'descent' : 'landing')
+    if (recorder) {
+      const phase = to > landingAltitude ? 'descent' : 'landing'
+      recordStep(recorder, column.air, from, -fromSpeed, at, -fall.speed, phase)
+    }
   }
-  return { peakSpeed: Math.sqrt(fall.peakSquare), landingSpeed: fall.speed }
+  end.peakSpeed = Math.sqrt(fall.peakSquare)
+  end.landingSpeed = fall.speed
 }
 
 /** The last metre upwards: gravity and drag stop the load. Exact for constant density. */
@@ -77,19 +92,38 @@ function coast(load: FallingLoad, burstRate: number, column: Column, at: Whereab
   at.elapsed += duration
 }
 
+/** Series over the slabs of a column, kept for the next descent. */
+let drifts = {
+  altitude: new Float64Array(0),
+  east: new Float64Array(0),
+  north: new Float64Array(0),
+}
+
 /** The state of a falling load, stepped down through a column. */
 class Fall {
   /** w², m²/s² */
   private square = 0
   peakSquare = 0
-  private readonly load: FallingLoad
-  private readonly column: Column
-  private readonly at: Whereabouts
+  private column!: Column
+  private at!: Whereabouts
+  private departure: WindDeparture | undefined
+  /** Cd·A/m: the drag k over the density, m²/kg */
+  private dragPerDensity = 0
 
-  constructor(load: FallingLoad, column: Column, at: Whereabouts) {
-    this.load = load
+  begin(load: FallingLoad, column: Column, at: Whereabouts, departure?: WindDeparture): void {
+    if (drifts.altitude.length < column.count) {
+      drifts = {
+        altitude: new Float64Array(column.count),
+        east: new Float64Array(column.count),
+        north: new Float64Array(column.count),
+      }
+    }
+    this.square = 0
+    this.peakSquare = 0
     this.column = column
     this.at = at
+    this.departure = departure
+    this.dragPerDensity = load.dragArea / load.mass
   }
 
   /** m/s, downwards positive */
@@ -116,6 +150,7 @@ class Fall {
       pointAir.density,
     )
     this.move(
+      this.column.slabBelow(this.at.altitude),
       to,
       duration,
       0.75 * thirdAir.windEast + 0.25 * pointAir.windEast,
@@ -127,33 +162,59 @@ class Fall {
   slabStep(slab: number, to: number): void {
     const { column } = this
     const from = this.at.altitude
-    let duration: number
-    if (from === column.altitude(slab + 1) && to === column.altitude(slab)) {
-      duration = this.radau(
-        from - to,
-        1,
-        column.thirdGravity[slab],
-        column.thirdDensity[slab],
-        1,
-        column.edgeGravity[slab],
-        column.edgeDensity[slab],
-      )
-    } else {
-      const third = from - (from - to) / 3
-      column.air.sampleAltitude(third, thirdAir)
-      column.air.sampleAltitude(to, pointAir)
-      duration = this.radau(
-        from - to,
-        1,
-        gravity(third),
-        thirdAir.density,
-        1,
-        gravity(to),
-        pointAir.density,
-      )
-    }
+    const third = from - (from - to) / 3
+    column.air.sampleAltitude(third, thirdAir)
+    column.air.sampleAltitude(to, pointAir)
+    const duration = this.radau(
+      from - to,
+      1,
+      gravity(third),
+      thirdAir.density,
+      1,
+      gravity(to),
+      pointAir.density,
+    )
     column.mean(to, from, slabAir)
-    this.move(to, duration, slabAir.windEast, slabAir.windNorth)
+    this.move(slab, to, duration, slabAir.windEast, slabAir.windNorth)
+  }
+
+  /** Down from slab `first` to slab `last` by whole slabs, but not the last: from the tables. */
+  wholeSlabs(first: number, last: number): void {
+    const { at, column, departure, dragPerDensity } = this
+    const { thickness, thirdGravity, thirdDensity, edgeGravity, edgeDensity } = column
+    const { windEast, windNorth } = column
+    const { altitude, east, north } = drifts
+    let { square, peakSquare } = this
+    let elapsed = 0
+    for (let slab = first; slab > last; slab--) {
+      // As `radau`, written out with both scales 1.
+      const firstPull = thickness * 2 * thirdGravity[slab]
+      const lastPull = thickness * 2 * edgeGravity[slab]
+      const firstDrag = thickness * thirdDensity[slab] * dragPerDensity
+      const lastDrag = thickness * edgeDensity[slab] * dragPerDensity
+      const right1 = square + (5 * firstPull - lastPull) / 12
+      const right2 = square + (3 * firstPull + lastPull) / 4
+      const a11 = 1 + (5 / 12) * firstDrag
+      const a12 = -lastDrag / 12
+      const a21 = (3 / 4) * firstDrag
+      const a22 = 1 + lastDrag / 4
+      const determinant = a11 * a22 - a12 * a21
+      const third = (right1 * a22 - a12 * right2) / determinant
+      square = (a11 * right2 - a21 * right1) / determinant
+      if (third > peakSquare) peakSquare = third
+      if (square > peakSquare) peakSquare = square
+      const duration = thickness * (0.75 / Math.sqrt(third) + 0.25 / Math.sqrt(square))
+      elapsed += duration
+      const step = first - slab
+      altitude[step] = column.altitude(slab) + thickness / 2
+      east[step] = (windEast[slab] + (departure ? departure.east[slab] : 0)) * duration
+      north[step] = (windNorth[slab] + (departure ? departure.north[slab] : 0)) * duration
+    }
+    driftAlong(at, 0, first - last, altitude, east, north)
+    this.square = square
+    this.peakSquare = peakSquare
+    at.elapsed += elapsed
+    at.altitude = column.altitude(last + 1)
   }
 
   /**
@@ -170,7 +231,7 @@ class Fall {
     lastGravity: number,
     lastDensity: number,
   ): number {
-    const dragPerDensity = this.load.dragArea / this.load.mass // k/ρ
+    const { dragPerDensity } = this
     const firstPull = h * firstScale * 2 * firstGravity
     const lastPull = h * lastScale * 2 * lastGravity
     const firstDrag = h * firstScale * firstDensity * dragPerDensity
@@ -191,10 +252,21 @@ class Fall {
     return h * ((0.75 * firstScale) / Math.sqrt(first) + (0.25 * lastScale) / Math.sqrt(last))
   }
 
-  private move(to: number, duration: number, windEast: number, windNorth: number): void {
-    const { at } = this
-    drift(at, (at.altitude + to) / 2, windEast * duration, windNorth * duration)
+  private move(
+    slab: number,
+    to: number,
+    duration: number,
+    windEast: number,
+    windNorth: number,
+  ): void {
+    const { at, departure } = this
+    const east = windEast + (departure ? departure.east[slab] : 0)
+    const north = windNorth + (departure ? departure.north[slab] : 0)
+    drift(at, (at.altitude + to) / 2, east * duration, north * duration)
     at.altitude = to
     at.elapsed += duration
   }
 }
+
+/** One for all descents, which never run at the same time. */
+const fall = new Fall()

@@ -8,6 +8,8 @@ export interface DragCurve {
   coefficient(reynolds: number): number
   /** The lowest Reynolds number with Cd·Re² = `best`: the speed reached first from rest. */
   reynolds(best: number): number
+  /** Fills `reynolds` [first, end) with that of each of `best`: a loop of the curve's own runs much faster. */
+  reynoldsOfAll(best: Float64Array, reynolds: Float64Array, first: number, end: number): void
   /** Reynolds numbers that the curve was fitted to. */
   readonly fitted: { from: number; to: number }
 }
@@ -44,6 +46,10 @@ class ConstantDrag implements DragCurve {
   reynolds(best: number): number {
     return Math.sqrt(best / this.value)
   }
+
+  reynoldsOfAll(best: Float64Array, reynolds: Float64Array, first: number, end: number): void {
+    for (let i = first; i < end; i++) reynolds[i] = this.reynolds(best[i])
+  }
 }
 
 /**
@@ -55,21 +61,22 @@ class SoundingBalloonDrag implements DragCurve {
   readonly fitted = { from: 4e4, to: 1.5e6 }
   private readonly low = Math.log(this.fitted.from)
   private readonly high = Math.log(this.fitted.to)
-  private readonly lowBest = logBest(this.low)
-  private readonly highBest = logBest(this.high)
-  /** ln Re and its slope at equal steps of ln(Cd·Re²) between the two ends. */
-  private readonly step = (this.highBest - this.lowBest) / INVERSE_STEPS
+  private readonly lowRoot = Math.exp(logBest(this.low) / 2)
+  private readonly highRoot = Math.exp(logBest(this.high) / 2)
+  /** Re, and its slope times the step, at equal steps of √(Cd·Re²) between the two ends. */
+  private readonly step = (this.highRoot - this.lowRoot) / INVERSE_STEPS
   private readonly inverse = new Float64Array(INVERSE_STEPS + 1)
-  private readonly inverseSlope = new Float64Array(INVERSE_STEPS + 1)
+  private readonly inverseRise = new Float64Array(INVERSE_STEPS + 1)
 
   constructor() {
     let x = this.low
     for (let node = 0; node <= INVERSE_STEPS; node++) {
-      const target = this.lowBest + node * this.step
+      const root = this.lowRoot + node * this.step
       // Newton: ln(Cd·Re²) rises by 1.5 to 2 per unit of ln Re over the whole range.
-      for (let round = 0; round < 20; round++) x -= (logBest(x) - target) / logBestSlope(x)
-      this.inverse[node] = x
-      this.inverseSlope[node] = 1 / logBestSlope(x)
+      for (let round = 0; round < 20; round++)
+        x -= (logBest(x) - 2 * Math.log(root)) / logBestSlope(x)
+      this.inverse[node] = Math.exp(x)
+      this.inverseRise[node] = (this.step * 2 * Math.exp(x)) / (root * logBestSlope(x))
     }
   }
 
@@ -78,23 +85,27 @@ class SoundingBalloonDrag implements DragCurve {
   }
 
   reynolds(best: number): number {
-    const target = Math.log(best)
-    if (target <= this.lowBest) return Math.sqrt(best / quadratic(this.low))
-    if (target >= this.highBest) return Math.sqrt(best / quadratic(this.high))
-    const place = (target - this.lowBest) / this.step
+    const root = Math.sqrt(best)
+    if (root <= this.lowRoot) return root / Math.sqrt(quadratic(this.low))
+    if (root >= this.highRoot) return root / Math.sqrt(quadratic(this.high))
+    const place = (root - this.lowRoot) / this.step
     const node = Math.min(INVERSE_STEPS - 1, Math.floor(place))
     const s = place - node
     const r = 1 - s
     // Cubic Hermite interpolation: within 1e-9 of ln Re (tests/physics/dragCurves.test.ts).
-    const x =
-      r * r * ((1 + 2 * s) * this.inverse[node] + s * this.step * this.inverseSlope[node]) +
-      s * s * ((1 + 2 * r) * this.inverse[node + 1] - r * this.step * this.inverseSlope[node + 1])
-    return Math.exp(x)
+    return (
+      r * r * ((1 + 2 * s) * this.inverse[node] + s * this.inverseRise[node]) +
+      s * s * ((1 + 2 * r) * this.inverse[node + 1] - r * this.inverseRise[node + 1])
+    )
+  }
+
+  reynoldsOfAll(best: Float64Array, reynolds: Float64Array, first: number, end: number): void {
+    for (let i = first; i < end; i++) reynolds[i] = this.reynolds(best[i])
   }
 }
 
-/** Cells of the table that takes ln(Cd·Re²) back to ln Re. */
-const INVERSE_STEPS = 128
+/** Cells of the table that takes √(Cd·Re²) back to Re. */
+const INVERSE_STEPS = 1024
 
 /** Constant, linear and square coefficient of Cd in ln Re (from memory, see SoundingBalloonDrag). */
 const QUADRATIC = [10.49, -1.406, 0.04808] as const
@@ -159,6 +170,10 @@ class SmoothSphereDrag implements DragCurve {
       else right = middle
     }
     return Math.exp((left + right) / 2)
+  }
+
+  reynoldsOfAll(best: Float64Array, reynolds: Float64Array, first: number, end: number): void {
+    for (let i = first; i < end; i++) reynolds[i] = this.reynolds(best[i])
   }
 
   private logBest(x: number): number {

@@ -1,7 +1,7 @@
 import { emptyAirState } from './air.ts'
-import { ascend, gasVolume, type AscendingBalloon } from './ascent.ts'
+import { ascend, emptyAscentEnd, gasVolume, type AscendingBalloon } from './ascent.ts'
 import { type Column } from './column.ts'
-import { descend } from './descent.ts'
+import { descend, emptyDescentEnd } from './descent.ts'
 import { dragCurve, type DragChoice } from './dragCurves.ts'
 import { wrapLongitude } from './earth.ts'
 import { fill, type Fill } from './fill.ts'
@@ -74,6 +74,7 @@ export function fly(plan: FlightPlan, column: Column, recorder?: PathRecorder): 
     temperatureOffset: gas.temperatureOffset,
     burstVolume: sphereVolume(balloon.ratedBurstDiameter),
     drag: dragCurve(plan.drag),
+    dragFactor: 1,
   }
   const releaseVolume = gasVolume(ascending, air.temperature, air.pressure)
   const fullestVolume = Math.max(filled.volume, releaseVolume)
@@ -91,8 +92,17 @@ export function fly(plan: FlightPlan, column: Column, recorder?: PathRecorder): 
     altitude: launch.altitude,
     elapsed: 0,
   }
-  const { burstRate, ...rates } = ascend(ascending, column, at, recorder)
-  const burst = { ...at, longitude: wrapLongitude(at.longitude) }
+  const ascent = emptyAscentEnd()
+  ascend(ascending, column, at, ascent, recorder)
+  const burst = {
+    latitude: at.latitude,
+    longitude: wrapLongitude(at.longitude),
+    altitude: at.altitude,
+    elapsed: at.elapsed,
+    pressure: 0,
+    temperature: 0,
+    diameter: balloon.ratedBurstDiameter,
+  }
   if (!(burst.altitude > landingAltitude)) {
     throw new NotFlyable({
       kind: 'falls-past-landing',
@@ -100,33 +110,36 @@ export function fly(plan: FlightPlan, column: Column, recorder?: PathRecorder): 
       burstAltitude: burst.altitude,
     })
   }
-
   column.air.sampleAltitude(burst.altitude, air)
-  const { pressure, temperature } = air
+  burst.pressure = air.pressure
+  burst.temperature = air.temperature
+
   const fallingMass = payloadMass + balloon.shareLeftOnLine * balloon.mass
   const falling = { mass: fallingMass, dragArea: dragArea(plan.parachute, fallingMass) }
-  const { peakSpeed, landingSpeed } = descend(
-    falling,
-    burstRate,
-    landingAltitude,
-    column,
-    at,
-    recorder,
-  )
+  const descent = emptyDescentEnd()
+  descend(falling, ascent.burstRate, landingAltitude, column, at, descent, recorder)
 
   return {
     fill: filled,
     ascent: {
-      ...rates,
-      duration: burst.elapsed,
+      releaseRate: ascent.releaseRate,
       meanRate: (burst.altitude - launch.altitude) / burst.elapsed,
+      duration: burst.elapsed,
+      lowestReynolds: ascent.lowestReynolds,
+      highestReynolds: ascent.highestReynolds,
     },
-    burst: { ...burst, pressure, temperature, diameter: balloon.ratedBurstDiameter },
+    burst,
     descent: {
       duration: at.elapsed - burst.elapsed,
-      peakSpeed,
+      peakSpeed: descent.peakSpeed,
       dragArea: falling.dragArea,
     },
-    landing: { ...at, longitude: wrapLongitude(at.longitude), speed: landingSpeed },
+    landing: {
+      latitude: at.latitude,
+      longitude: wrapLongitude(at.longitude),
+      altitude: at.altitude,
+      elapsed: at.elapsed,
+      speed: descent.landingSpeed,
+    },
   }
 }

@@ -1,4 +1,6 @@
-import { type Position } from './earth.ts'
+import { emptyAirState, type ColumnAir } from './air.ts'
+import { firstAbove } from './column.ts'
+import { drift, type Position } from './earth.ts'
 
 /** Where the flight train is, while it flies. Mutable: one per flight, moved along by ascent and descent. */
 export interface Whereabouts extends Position {
@@ -16,13 +18,68 @@ export interface PathRecorder {
   record(at: Whereabouts, verticalSpeed: number, phase: Phase): void
 }
 
-/** How far, m, a recorded path may bend away from the straight line between two recorded steps. */
-const RECORDED_BEND = 20
+/** How far, m, a recorded path may bend away from the straight line between two recorded points. */
+const RECORDED_BEND = 15
+
+const air = emptyAirState()
 
 /**
- * Height, m, that a recorded flight may step through at a vertical `speed` in m/s where the wind ranges
- * over `windRange` m/s: such a velocity bends a path of duration t from its chord by at most r·t/4.
+ * Records a step that was flown from one place to another: the points where the wind breaks in between,
+ * and enough more that the path never bends far from the straight line, then its end in `phase`. The
+ * vertical speeds are in m/s, upwards positive; over one step they hardly differ.
  */
-export function recordedStep(windRange: number, speed: number): number {
-  return (4 * RECORDED_BEND * speed) / windRange
+export function recordStep(
+  recorder: PathRecorder,
+  column: ColumnAir,
+  from: Whereabouts,
+  fromSpeed: number,
+  to: Whereabouts,
+  toSpeed: number,
+  phase: Phase,
+): void {
+  const between = phase === 'burst' || phase === 'ascent' ? 'ascent' : 'descent'
+  const duration = to.elapsed - from.elapsed
+  const pace = duration / (to.altitude - from.altitude)
+  const at = { ...from }
+  column.sampleAltitude(from.altitude, air)
+  for (const altitude of breaksBetween(column, from.altitude, to.altitude)) {
+    const { windEast, windNorth } = air
+    column.sampleAltitude(altitude, air)
+    const [changeEast, changeNorth] = [air.windEast - windEast, air.windNorth - windNorth]
+    const start = at.altitude
+    const wait = pace * (altitude - start)
+    // A velocity that changes steadily by Δ over a time t bends a path from its chord by Δ·t/8.
+    const bend = (Math.hypot(changeEast, changeNorth) * wait) / 8
+    const parts = Math.max(1, Math.ceil(Math.sqrt(bend / RECORDED_BEND)))
+    for (let part = 1; part <= parts; part++) {
+      const middle = (part - 0.5) / parts
+      const time = wait / parts
+      const height = start + ((altitude - start) * part) / parts
+      drift(
+        at,
+        (at.altitude + height) / 2,
+        (windEast + middle * changeEast) * time,
+        (windNorth + middle * changeNorth) * time,
+      )
+      at.altitude = height
+      at.elapsed += time
+      if (height !== to.altitude) {
+        const share = (at.elapsed - from.elapsed) / duration
+        recorder.record(at, fromSpeed + share * (toSpeed - fromSpeed), between)
+      }
+    }
+  }
+  recorder.record(to, toSpeed, phase)
+}
+
+/** The altitudes between two others where the air breaks, in the order of flight, and the second. */
+function breaksBetween({ breakAltitudes }: ColumnAir, from: number, to: number): number[] {
+  const [low, high] = [Math.min(from, to), Math.max(from, to)]
+  const breaks: number[] = []
+  for (let i = firstAbove(breakAltitudes, low); breakAltitudes[i] < high; i++) {
+    breaks.push(breakAltitudes[i])
+  }
+  if (to < from) breaks.reverse()
+  breaks.push(to)
+  return breaks
 }

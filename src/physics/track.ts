@@ -9,7 +9,7 @@ const EARTH_RADIUS = 6_371_009
  * How far, m, the kept points may stand off the recorded path at any moment. With what the recorded path
  * itself may bend between two steps this keeps a track within 50 m of the flight.
  */
-const TOLERANCE = 28
+const TOLERANCE = 25
 
 /** A point of a flown track. SI; angles in radians, longitude in [-π, π). */
 export interface TrackPoint extends Whereabouts {

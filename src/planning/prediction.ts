@@ -15,8 +15,7 @@ export interface Prediction {
 }
 
 /**
- * Predicts one flight in given air. Always with its track, so that a trial and a stored run of one plan
- * are the same flight to the last digit: recording takes shorter steps where the wind turns.
+ * Predicts one flight in given air, with its track.
  * @throws NotFlyable
  */
 export function predict(plan: FlightPlan, source: AirSource): Prediction {

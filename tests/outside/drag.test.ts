@@ -49,6 +49,7 @@ test.each(WMO_BALLOONS)(
       mass: (mass + payload) / 1000 + filled.gasMass,
       temperatureOffset: 0,
       burstVolume: Infinity,
+      dragFactor: 1,
       drag: dragCurve({ curve: 'sounding-balloon' }),
     }
     expect(Math.abs((riseRate(rising, site, 0) * 60) / rate - 1)).toBeLessThan(0.1)

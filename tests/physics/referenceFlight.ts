@@ -37,6 +37,7 @@ export function referenceFlight(
     mass: plan.balloon.mass + plan.payloadMass + filled.gasMass,
     temperatureOffset: plan.gas.temperatureOffset,
     burstVolume: sphereVolume(plan.balloon.ratedBurstDiameter),
+    dragFactor: 1,
     drag: dragCurve(plan.drag),
   }
   const burstAltitude = bisect(plan.launch.altitude, 50_000, (altitude) => {
