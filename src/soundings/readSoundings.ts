@@ -1,5 +1,7 @@
 import { wrapLongitude } from '../physics/earth.ts'
 import { BadSounding } from './badSounding.ts'
+import { readBufr } from './bufr.ts'
+import { isBufr } from './bufrMessage.ts'
 import { complete } from './complete.ts'
 import { readCsv } from './csv.ts'
 import { decodeText } from './decodeText.ts'
@@ -54,6 +56,7 @@ function readReports(
   format: SoundingFormat | undefined,
   notes: Notes,
 ): ReportedSounding[] {
+  if (format === 'bufr' || (format === undefined && isBufr(bytes))) return readBufr(bytes, notes)
   const text = decodeText(bytes)
   if (text.trim() === '') throw new BadSounding('unparseable', [{ message: 'empty' }])
   switch (format ?? recogniseText(text)) {
