@@ -9,6 +9,7 @@ import { readIgra } from './igra.ts'
 import { readJson } from './json.ts'
 import { Notes } from './notes.ts'
 import { type ReportedSounding, type Sounding } from './profile.ts'
+import { readTemp } from './temp.ts'
 import { recogniseText, type SoundingFormat } from './recognise.ts'
 
 /** What the sender of a sounding may say beside its bytes. */
@@ -22,6 +23,11 @@ export interface ReadOptions {
    * that tell no time where it is several.
    */
   validAt?: number
+  /**
+   * Seconds since 1970: when the bytes came in. TEMP reports tell only day and hour, and are taken to
+   * be of the month that brings them closest to `validAt`, or else to this.
+   */
+  receivedAt?: number
 }
 
 /**
@@ -31,7 +37,7 @@ export interface ReadOptions {
  */
 export function readSoundings(bytes: Uint8Array, options: ReadOptions): Sounding[] {
   const notes = new Notes()
-  const reports = readReports(bytes, options.format, notes)
+  const reports = readReports(bytes, options, notes)
   const soundings: Sounding[] = []
   let refused: BadSounding | null = null
   for (const report of reports) {
@@ -53,7 +59,7 @@ export function readSoundings(bytes: Uint8Array, options: ReadOptions): Sounding
 
 function readReports(
   bytes: Uint8Array,
-  format: SoundingFormat | undefined,
+  { format, validAt, receivedAt }: ReadOptions,
   notes: Notes,
 ): ReportedSounding[] {
   if (format === 'bufr' || (format === undefined && isBufr(bytes))) return readBufr(bytes, notes)
@@ -64,6 +70,8 @@ function readReports(
       return [readJson(text)]
     case 'igra':
       return readIgra(text, notes)
+    case 'temp':
+      return readTemp(text, validAt ?? receivedAt ?? null, notes)
     case 'csv':
       return [readCsv(text, notes)]
   }
