@@ -1,13 +1,8 @@
 import { STANDARD_GRAVITY } from '../physics/constants.ts'
 import { BadSounding } from './badSounding.ts'
-import {
-  bufrSubsets,
-  cellOf,
-  stepsFor,
-  type BufrBlock,
-  type Cell,
-  type StepsLeft,
-} from './bufrData.ts'
+import { cellOf, type BufrBlock, type Cell } from './bufrBlock.ts'
+import { bufrSubsets, stepsFor } from './bufrData.ts'
+import { type StepsLeft } from './bufrDecoder.ts'
 import { BufrError } from './bufrError.ts'
 import { bufrMessages, timeOf, type BufrMessage } from './bufrMessage.ts'
 import { type Notes } from './notes.ts'
@@ -19,6 +14,9 @@ import {
 } from './profile.ts'
 
 const DEGREE = Math.PI / 180
+
+/** After so many messages that cannot be read, what follows is no file of messages. */
+const MOST_FAILURES = 1000
 
 type NumberOf = (...descriptors: number[]) => number | undefined
 
@@ -32,6 +30,7 @@ export function readBufr(bytes: Uint8Array, notes: Notes): ReportedSounding[] {
   let reason: string | null = null
   const left = stepsFor(bytes.length)
   let count = 0
+  let failures = 0
   for (const message of bufrMessages(bytes)) {
     count++
     const label = `message ${count}`
@@ -44,6 +43,7 @@ export function readBufr(bytes: Uint8Array, notes: Notes): ReportedSounding[] {
       if (!(error instanceof BufrError)) throw error
       reason ??= error.message
       notes.add(`BUFR message dropped: ${error.message}`, { label })
+      if (++failures >= MOST_FAILURES) break
     }
   }
   if (soundings.length === 0) {

@@ -1,11 +1,6 @@
 import { describe, expect, it } from 'vitest'
-import {
-  bufrSubsets,
-  cellOf,
-  stepsFor,
-  type BufrBlock,
-  type Cell,
-} from '../../src/soundings/bufrData.ts'
+import { cellOf, type BufrBlock, type Cell } from '../../src/soundings/bufrBlock.ts'
+import { bufrSubsets, stepsFor } from '../../src/soundings/bufrData.ts'
 import { BufrError } from '../../src/soundings/bufrError.ts'
 import { bufrMessages } from '../../src/soundings/bufrMessage.ts'
 import { fixture } from '../soundings/samples.ts'

@@ -155,6 +155,12 @@ describe('BUFR', () => {
     expect(performance.now() - start).toBeLessThan(5000)
   })
 
+  it('gives up on a file of beginnings', () => {
+    const start = performance.now()
+    expect(refusalOf(Buffer.from('BUFR\0\0\x20\x04'.repeat(500_000))).unparseable).toBe(true)
+    expect(performance.now() - start).toBeLessThan(3000)
+  })
+
   it('is soundings or refused, whatever bytes are altered', () => {
     const files = [
       giles,
