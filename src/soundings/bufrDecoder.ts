@@ -205,23 +205,21 @@ export class BufrDecoder {
     if (width < 0) throw new BufrError('a number of less than no bits')
     const scale = entry.scale + extraScale
     const reference = entry.reference + extraReference
-    const value = (raw: number): number =>
-      scale > 0 ? (raw + reference) / 10 ** scale : (raw + reference) * 10 ** -scale
     const base = this.reader.read(width)
     const missing = mayMiss && width > 0 && base === 2 ** width - 1
     if (this.compressed === 0) {
       this.spend(1)
-      return [missing ? null : value(base)]
+      return [missing ? null : scaled(base + reference, scale)]
     }
     const bits = this.reader.read(6)
     if (bits === 0) {
       this.spend(1)
-      return [missing ? null : value(base)]
+      return [missing ? null : scaled(base + reference, scale)]
     }
     this.spend(this.compressed)
     return Array.from({ length: this.compressed }, () => {
       const increment = this.reader.read(bits)
-      return increment === 2 ** bits - 1 ? null : value(base + increment)
+      return increment === 2 ** bits - 1 ? null : scaled(base + increment + reference, scale)
     })
   }
 
@@ -249,4 +247,9 @@ export class BufrDecoder {
     if (this.cells > MOST_CELLS) throw new BufrError(`more than ${MOST_CELLS} values`)
     if (this.left.steps < 0) throw new BufrError('more values described than the file can hold')
   }
+}
+
+/** A number to the power of ten that its scale tells, rounded once. */
+function scaled(value: number, scale: number): number {
+  return scale > 0 ? value / 10 ** scale : value * 10 ** -scale
 }

@@ -17,6 +17,9 @@ const START = /^(TT|UU|XX|II)(AA|BB|CC|DD)$/
 /** Where another report begins, be it of wind alone, which is not read. */
 const END = /^(TT|UU|XX|II|PP|QQ|EE)(AA|BB|CC|DD)$/
 
+/** Each sounding has four parts; many more are no reports. */
+const MOST_PARTS = 5 * MOST_SOUNDINGS
+
 interface Heading {
   /** What the parts of one sounding have in common */
   key: string
@@ -51,14 +54,18 @@ export function isTemp(text: string): boolean {
  */
 export function readTemp(text: string, near: number | null, notes: Notes): ReportedSounding[] {
   const assemblies = new Map<string, Assembly>()
+  let count = 0
   for (const [start, ...groups] of parts(text)) {
+    if (++count > MOST_PARTS || assemblies.size >= MOST_SOUNDINGS) {
+      notes.add('too many reports: from here on none is read', { line: start.line })
+      break
+    }
     const heading = readHeading(start.text, groups)
     if (!heading) {
       notes.add('report dropped: its heading cannot be read', { line: start.line })
       continue
     }
     const assembly = assemblies.get(heading.key) ?? begin(heading, start.line)
-    if (assemblies.size >= MOST_SOUNDINGS) continue
     assemblies.set(heading.key, assembly)
     const content = readPart(groups.slice(heading.length), heading.form)
     for (const { line } of content.skipped) notes.add('group that fits nowhere skipped', { line })
