@@ -40,11 +40,6 @@ export class BitReader {
     return String.fromCharCode(...codes).replace(/[\0 ]+$/, '') // padded with blanks or zeros
   }
 
-  skip(width: number): void {
-    this.claim(width)
-    this.position += width
-  }
-
   private claim(width: number): void {
     if (this.position + width > this.end) throw new BufrError('data end before their description')
   }

@@ -235,9 +235,9 @@ export class BufrDecoder {
 
   /** A new reference value of operator 2 03: a sign, then the magnitude. */
   private readReference(width: number): number {
+    if (this.compressed > 0) throw new BufrError('operator 2 03 in compressed data cannot be read')
     const negative = this.reader.read(1) === 1
     const magnitude = this.reader.read(width - 1)
-    if (this.compressed > 0) this.reader.skip(6)
     return negative ? -magnitude : magnitude
   }
 

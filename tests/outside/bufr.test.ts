@@ -61,6 +61,7 @@ describe('BUFR against the reference decoder', () => {
     ['three-subsets-compressed', 3, 324],
     // Operators 2 01, 2 02, 2 03, 2 04, 2 07 and 2 08; two subsets of different length; wind as u and v.
     ['operators', 2, 52],
+    ['operators-compressed', 2, 58],
     // Operator 2 22 with a bit map and per cent confidences; a replication without delay.
     ['quality', 1, 34],
   ])('%s: %i subsets, %i values', (name, subsets, count) => {
