@@ -18,4 +18,12 @@ export interface SoundingLevel {
   windNorth?: number
   /** Seconds since the sonde's release, where the report tells */
   elapsed?: number
+  /** How far the sonde has drifted since release, radians, where the report tells */
+  displacement?: Displacement
+}
+
+/** Differences of latitude and longitude, radians; the longitude's lies in [-π, π). */
+export interface Displacement {
+  latitude: number
+  longitude: number
 }

@@ -45,7 +45,8 @@ export function checkLevel(level: ReportedLevel): SoundingProblem[] {
   for (const { quantity, member, name, unit, scale, least, most } of RANGES) {
     const value = level[quantity]
     if (value === undefined) continue
-    const shown = Number((value / scale).toPrecision(9))
+    if (value >= least * scale && value <= most * scale) continue
+    const shown = Number((value / scale).toPrecision(9)) // and 360° is 360 whatever it was rounded to
     if (shown >= least && shown <= most) continue
     const message = `${name} ${shown} ${unit}: from ${least} to ${most} ${unit} can be flown in`
     problems.push(problemAt(level.place, message, member))

@@ -30,6 +30,7 @@ export function complete(report: ReportedSounding, name: string, notes: Notes): 
   completePressures(levels, notes)
   interpolateHeights(levels, notes)
   levels = fallingPressures(mergeEqualHeights(levels, notes), notes)
+  levels = aboveGround(levels, notes)
   dropExcessVapour(levels, notes)
   dropDistantHumidity(levels, notes)
 
@@ -82,6 +83,17 @@ function fallingPressures(levels: readonly DraftLevel[], notes: Notes): DraftLev
   })
 }
 
+/** Leaves out levels below the lowest observation, which reports extrapolate to beneath the ground. */
+function aboveGround(levels: readonly DraftLevel[], notes: Notes): DraftLevel[] {
+  const ground = levels.findIndex(
+    (level) => level.temperature !== undefined || level.wind !== undefined,
+  )
+  for (const { place } of levels.slice(0, Math.max(0, ground))) {
+    notes.add('level below the lowest observation dropped', place)
+  }
+  return levels.slice(Math.max(0, ground))
+}
+
 /** The completed level again as a report, to check what completing made of it. */
 function asReported({ place, pressure, height }: DraftLevel): ReportedLevel {
   return {
@@ -111,7 +123,7 @@ function count(levels: number, quantity: string): string {
 }
 
 function finish(level: DraftLevel): SoundingLevel {
-  const { height, pressure, temperature, vapourPressure, wind, elapsed } = level
+  const { height, pressure, temperature, vapourPressure, wind, elapsed, displacement } = level
   return {
     geopotentialHeight: height ?? NaN,
     ...(pressure === undefined ? {} : { pressure }),
@@ -119,5 +131,6 @@ function finish(level: DraftLevel): SoundingLevel {
     ...(vapourPressure === undefined ? {} : { vapourPressure }),
     ...(wind === undefined ? {} : { windEast: wind.east, windNorth: wind.north }),
     ...(elapsed === undefined ? {} : { elapsed }),
+    ...(displacement === undefined ? {} : { displacement }),
   }
 }

@@ -1,7 +1,7 @@
 import { CsvError, parse } from 'csv-parse/sync'
 import { BadSounding, MOST_PROBLEMS, type SoundingProblem } from './badSounding.ts'
+import { CsvTable, shorten, type Column, type Row } from './csvTable.ts'
 import { readHeading, understoodHeadings, type Quantity } from './csvHeadings.ts'
-import { parseTime } from './parseTime.ts'
 import { type Notes } from './notes.ts'
 import { MOST_LEVELS, type ReportedLevel, type ReportedSounding } from './profile.ts'
 
@@ -10,20 +10,6 @@ const LONGEST_LINE = 20_000
 
 /** Columns a row may have. */
 const MOST_COLUMNS = 500
-
-const MISSING = -9999
-
-interface Column {
-  index: number
-  heading: string
-  quantity: Quantity
-  toSi: (value: number) => number
-}
-
-interface Row {
-  line: number
-  cells: string[]
-}
 
 /**
  * Reads a sounding in CSV: one line of headings, then one line a level; separated by comma,
@@ -36,7 +22,7 @@ export function readCsv(text: string, notes: Notes): ReportedSounding {
   if (!head) throw refusal([{ message: 'no line of headings' }])
   const columns = readHeadings(head, notes)
   const decimal = delimiter === ',' ? '.' : ','
-  const table = new Table(columns, decimal)
+  const table = new CsvTable(columns, decimal)
 
   const levels: ReportedLevel[] = []
   for (const row of rows) {
@@ -50,95 +36,6 @@ export function readCsv(text: string, notes: Notes): ReportedSounding {
   if (table.problems.length > 0) throw refusal(table.problems)
   if (table.timeWithoutZone) notes.add('times without a zone read as UTC')
   return { name: null, station: null, ...table.origin(levels), levels, place: { line: head.line } }
-}
-
-/** Turns rows into levels, and gathers what stands for the whole sounding on the way. */
-class Table {
-  readonly problems: SoundingProblem[] = []
-  timeWithoutZone = false
-  private readonly columns: readonly Column[]
-  private readonly decimal: string
-  private readonly times: (number | null)[] = []
-  private latitude: number | null = null
-  private longitude: number | null = null
-
-  constructor(columns: readonly Column[], decimal: string) {
-    this.columns = columns
-    this.decimal = decimal
-  }
-
-  read({ line, cells }: Row): ReportedLevel {
-    const level: ReportedLevel = { place: { line } }
-    let time: number | null = null
-    for (const column of this.columns) {
-      const cell = cells[column.index]
-      if (cell === '') continue
-      if (column.quantity === 'time') {
-        time = this.readTime(cell, column, line)
-        continue
-      }
-      const value = this.readNumber(cell, column, line)
-      if (value === null) continue
-      if (column.quantity === 'latitude') this.latitude ??= value
-      else if (column.quantity === 'longitude') this.longitude ??= value
-      else level[column.quantity] = value
-    }
-    this.times.push(time)
-    return level
-  }
-
-  /** When and where the sounding began; gives levels the time since then where a clock tells it. */
-  origin(levels: readonly ReportedLevel[]) {
-    const first = this.times.find((time) => time !== null) ?? null
-    if (first !== null && this.times.some((time) => time !== null && time !== first)) {
-      for (const [index, level] of levels.entries()) {
-        const time = this.times[index]
-        if (time !== null) level.elapsed ??= time - first
-      }
-    }
-    const whole = this.latitude !== null && this.longitude !== null
-    return {
-      validAt: first,
-      latitude: whole ? this.latitude : null,
-      longitude: whole ? this.longitude : null,
-    }
-  }
-
-  private readNumber(cell: string, column: Column, line: number): number | null {
-    const plain = this.decimal === ',' ? cell.replace(',', '.') : cell
-    const value = /^[+-]?(\d+\.?\d*|\.\d+)(e[+-]?\d{1,3})?$/i.test(plain) ? Number(plain) : NaN
-    if (value === MISSING) return null
-    if (Number.isFinite(value)) {
-      const bound =
-        column.quantity === 'latitude' ? 90 : column.quantity === 'longitude' ? 360 : Infinity
-      if (Math.abs(value) <= bound) return column.toSi(value)
-      this.refuse(line, `${column.heading} ${value}: from -${bound} to ${bound} can be used`)
-      return null
-    }
-    this.refuse(
-      line,
-      `'${shorten(cell)}' under '${column.heading}' is not a number; leave it empty or write ${MISSING} where a value is missing`,
-    )
-    return null
-  }
-
-  private readTime(cell: string, column: Column, line: number): number | null {
-    if (Number(cell) === MISSING) return null
-    const time = parseTime(cell)
-    if (!time) {
-      this.refuse(
-        line,
-        `'${shorten(cell)}' under '${column.heading}' is not a time such as 2026-12-05T09:00:00Z`,
-      )
-      return null
-    }
-    if (!time.zoned) this.timeWithoutZone = true
-    return time.seconds
-  }
-
-  private refuse(line: number, message: string): void {
-    this.problems.push({ line, message })
-  }
 }
 
 function readHeadings(head: Row, notes: Notes): Column[] {
@@ -221,10 +118,6 @@ function csvMessage(error: CsvError): string {
     return `a line of more than ${LONGEST_LINE} characters is no line of a sounding`
   }
   return `not CSV: ${shorten(error.message, 200)}`
-}
-
-function shorten(text: string, most = 60): string {
-  return text.length > most ? `${text.slice(0, most)}…` : text
 }
 
 function refusal(problems: readonly SoundingProblem[]): BadSounding {

@@ -1,5 +1,6 @@
 import { vapourPressure } from '../physics/air.ts'
-import { geopotentialHeight } from '../physics/earth.ts'
+import { geopotentialHeight, wrapLongitude } from '../physics/earth.ts'
+import { type Displacement } from '../physics/sounding.ts'
 import { type Notes } from './notes.ts'
 import { type Place, type ReportedLevel } from './profile.ts'
 
@@ -13,6 +14,7 @@ export interface DraftLevel {
   vapourPressure?: number
   wind?: { east: number; north: number }
   elapsed?: number
+  displacement?: Displacement
 }
 
 /** Relative humidities up to here are limited to saturation, larger ones are not believed. */
@@ -29,6 +31,10 @@ export function draftLevel(level: ReportedLevel, notes: Notes): DraftLevel {
   else if (level.altitude !== undefined) draft.height = geopotentialHeight(level.altitude)
   if (level.elapsed !== undefined) draft.elapsed = level.elapsed
   if (level.temperature !== undefined) draft.temperature = level.temperature
+  if (level.displacement !== undefined) {
+    const { latitude, longitude } = level.displacement
+    draft.displacement = { latitude, longitude: wrapLongitude(longitude) }
+  }
 
   const vapour = vapourOf(level, notes)
   if (vapour !== undefined) draft.vapourPressure = vapour
@@ -111,5 +117,8 @@ export function absorb(level: DraftLevel, other: DraftLevel): boolean {
   if (level.pressure === undefined && other.pressure !== undefined) level.pressure = other.pressure
   if (level.height === undefined && other.height !== undefined) level.height = other.height
   if (level.elapsed === undefined && other.elapsed !== undefined) level.elapsed = other.elapsed
+  if (level.displacement === undefined && other.displacement !== undefined) {
+    level.displacement = other.displacement
+  }
   return whole
 }

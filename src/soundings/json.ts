@@ -75,6 +75,20 @@ export const profileLevelSchema = z
         description: "Seconds since the sonde's release.",
         examples: [300],
       }),
+    latitudeDisplacementDeg: z
+      .number()
+      .optional()
+      .meta({
+        description: 'Degrees of latitude the sonde has drifted since its release, north positive.',
+        examples: [0.05],
+      }),
+    longitudeDisplacementDeg: z
+      .number()
+      .optional()
+      .meta({
+        description: 'Degrees of longitude the sonde has drifted since its release, east positive.',
+        examples: [0.12],
+      }),
   })
   .meta({
     description:
@@ -183,6 +197,10 @@ function reported(level: z.infer<typeof profileLevelSchema>, path: string): Repo
   if (level.windFromDeg !== undefined) read.windFrom = level.windFromDeg * DEGREE
   if (level.windSpeedMs !== undefined) read.windSpeed = level.windSpeedMs
   if (level.elapsedS !== undefined) read.elapsed = level.elapsedS
+  const { latitudeDisplacementDeg: north, longitudeDisplacementDeg: east } = level
+  if (north !== undefined && east !== undefined) {
+    read.displacement = { latitude: north * DEGREE, longitude: east * DEGREE }
+  }
   return read
 }
 

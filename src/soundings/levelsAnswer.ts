@@ -3,6 +3,8 @@ import { geometricAltitude } from '../physics/earth.ts'
 import { type SoundingLevel } from '../physics/sounding.ts'
 import { type Sounding } from './profile.ts'
 
+const DEGREE = Math.PI / 180
+
 /** A completed level in the units of the API. */
 export interface LevelAnswer {
   geopotentialHeightM: number
@@ -14,6 +16,8 @@ export interface LevelAnswer {
   windFromDeg?: number
   windSpeedMs?: number
   elapsedS?: number
+  latitudeDisplacementDeg?: number
+  longitudeDisplacementDeg?: number
 }
 
 /** How many levels of a quantity there are, and between which geometric altitudes in m. */
@@ -41,11 +45,15 @@ export function levelsAnswer(levels: readonly SoundingLevel[]): LevelAnswer[] {
       answer.relativeHumidityPercent = round((100 * vapour) / vapourPressure(temperature), 3)
     }
     if (windEast !== undefined && windNorth !== undefined) {
-      const from = (Math.atan2(-windEast, -windNorth) * 180) / Math.PI
+      const from = Math.atan2(-windEast, -windNorth) / DEGREE
       answer.windSpeedMs = round(Math.hypot(windEast, windNorth), 4)
       answer.windFromDeg = answer.windSpeedMs === 0 ? 0 : round(from < 0 ? from + 360 : from, 3)
     }
     if (level.elapsed !== undefined) answer.elapsedS = level.elapsed
+    if (level.displacement) {
+      answer.latitudeDisplacementDeg = round(level.displacement.latitude / DEGREE, 6)
+      answer.longitudeDisplacementDeg = round(level.displacement.longitude / DEGREE, 6)
+    }
     return answer
   })
 }

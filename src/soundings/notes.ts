@@ -6,6 +6,8 @@ const NAMED_PLACES = 5
 interface Alike {
   count: number
   places: Place[]
+  /** True where more places were given than are named */
+  more: boolean
 }
 
 /** Gathers what was done to a sounding; alike notes become one with a count and the first places. */
@@ -16,34 +18,39 @@ export class Notes {
   add(message: string, place?: Place): void {
     let group = this.alike.get(message)
     if (!group) {
-      group = { count: 0, places: [] }
+      group = { count: 0, places: [], more: false }
       this.alike.set(message, group)
     }
     group.count++
-    if (place && group.places.length < NAMED_PLACES) group.places.push(place)
+    if (!place || sameLine(place, group.places.at(-1))) return
+    if (group.places.length < NAMED_PLACES) group.places.push(place)
+    else group.more = true
   }
 
   /** The notes in the order in which each was first made. */
   list(): Note[] {
-    return Array.from(this.alike, ([message, { count, places }]) => {
-      const first = places.at(0)
+    return Array.from(this.alike, ([message, group]) => {
+      const first = group.places.at(0)
       return {
         ...(first && 'line' in first ? { line: first.line } : {}),
         ...(first && 'path' in first ? { path: first.path } : {}),
-        message: message + where(count, places),
+        message: message + where(group),
       }
     })
   }
 }
 
-function where(count: number, places: readonly Place[]): string {
+function sameLine(place: Place, last: Place | undefined): boolean {
+  return last !== undefined && 'line' in last && 'line' in place && last.line === place.line
+}
+
+function where({ count, places, more }: Alike): string {
   const first = places.at(0)
   if (!first) return count > 1 ? ` (${count} times)` : ''
   const names = places.map((place) =>
     'line' in place ? String(place.line) : 'path' in place ? place.path : place.label,
   )
-  const kind = 'line' in first ? (count > 1 ? 'lines ' : 'line ') : ''
+  const kind = 'line' in first ? (places.length > 1 ? 'lines ' : 'line ') : ''
   const times = count > 1 ? `${count} times: ` : ''
-  const more = count > names.length ? ' …' : ''
-  return ` (${times}${kind}${names.join(', ')}${more})`
+  return ` (${times}${kind}${names.join(', ')}${more ? ' …' : ''})`
 }

@@ -1,4 +1,4 @@
-import { type SoundingLevel } from '../physics/sounding.ts'
+import { type Displacement, type SoundingLevel } from '../physics/sounding.ts'
 
 /** A sounding ready to be flown in: checked, completed, SI. */
 export interface Sounding {
@@ -48,6 +48,8 @@ export interface ReportedLevel {
   windSpeed?: number
   /** Seconds since release */
   elapsed?: number
+  /** Radians since release */
+  displacement?: Displacement
 }
 
 /** A sounding as a report gives it. */

@@ -1,5 +1,7 @@
 import { wrapLongitude } from '../physics/earth.ts'
 import { BadSounding } from './badSounding.ts'
+import { readBufr } from './bufr.ts'
+import { isBufr } from './bufrMessage.ts'
 import { complete } from './complete.ts'
 import { readCsv } from './csv.ts'
 import { decodeText } from './decodeText.ts'
@@ -7,6 +9,7 @@ import { readIgra } from './igra.ts'
 import { readJson } from './json.ts'
 import { Notes } from './notes.ts'
 import { type ReportedSounding, type Sounding } from './profile.ts'
+import { readTemp } from './temp.ts'
 import { recogniseText, type SoundingFormat } from './recognise.ts'
 
 /** What the sender of a sounding may say beside its bytes. */
@@ -20,6 +23,11 @@ export interface ReadOptions {
    * that tell no time where it is several.
    */
   validAt?: number
+  /**
+   * Seconds since 1970: when the bytes came in. TEMP reports tell only day and hour, and are taken to
+   * be of the month that brings them closest to `validAt`, or else to this.
+   */
+  receivedAt?: number
 }
 
 /**
@@ -29,7 +37,7 @@ export interface ReadOptions {
  */
 export function readSoundings(bytes: Uint8Array, options: ReadOptions): Sounding[] {
   const notes = new Notes()
-  const reports = readReports(bytes, options.format, notes)
+  const reports = readReports(bytes, options, notes)
   const soundings: Sounding[] = []
   let refused: BadSounding | null = null
   for (const report of reports) {
@@ -51,9 +59,10 @@ export function readSoundings(bytes: Uint8Array, options: ReadOptions): Sounding
 
 function readReports(
   bytes: Uint8Array,
-  format: SoundingFormat | undefined,
+  { format, validAt, receivedAt }: ReadOptions,
   notes: Notes,
 ): ReportedSounding[] {
+  if (format === 'bufr' || (format === undefined && isBufr(bytes))) return readBufr(bytes, notes)
   const text = decodeText(bytes)
   if (text.trim() === '') throw new BadSounding('unparseable', [{ message: 'empty' }])
   switch (format ?? recogniseText(text)) {
@@ -61,6 +70,8 @@ function readReports(
       return [readJson(text)]
     case 'igra':
       return readIgra(text, notes)
+    case 'temp':
+      return readTemp(text, validAt ?? receivedAt ?? null, notes)
     case 'csv':
       return [readCsv(text, notes)]
   }

@@ -212,6 +212,15 @@ describe('sorting and merging levels', () => {
     )
   })
 
+  it('drops levels extrapolated to below the ground', () => {
+    const beneath = { pressureHPa: 1010, geopotentialHeightM: 15 }
+    const { levels, notes } = readOne({
+      levels: [beneath, ground, { pressureHPa: 500, temperatureK: 255, ...wind }],
+    })
+    expect(levels[0].geopotentialHeight).toBe(100)
+    expect(notes.at(-1)?.message).toBe('level below the lowest observation dropped (/levels/0)')
+  })
+
   it('drops what was reported after the highest level', () => {
     const level = (elapsedS: number, geopotentialHeightM: number) => ({
       elapsedS,

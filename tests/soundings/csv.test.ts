@@ -163,6 +163,25 @@ describe('CSV', () => {
     expect(clock.validAt).toBe(Date.UTC(2026, 11, 5, 8, 0) / 1000)
   })
 
+  it('keeps how far the sonde drifted, where latitude and longitude change', () => {
+    const still = readOne(
+      table(
+        `${plain},lat,lon`,
+        rows.map((row) => `${row},47,8`),
+      ),
+    )
+    expect(still.levels[2]).not.toHaveProperty('displacement')
+    const drifted = readOne(
+      table(
+        `${plain},lat,lon`,
+        rows.map((row, index) => `${row},${47 + index / 10},${179.9 + index / 10}`),
+      ),
+    )
+    expect(drifted.latitude).toBeCloseTo(47 * DEGREE, 10)
+    expect(drifted.levels[2].displacement?.latitude).toBeCloseTo(0.2 * DEGREE, 10)
+    expect(drifted.levels[2].displacement?.longitude).toBeCloseTo(0.2 * DEGREE, 10)
+  })
+
   it('refuses a latitude beyond the pole and a time that is none', () => {
     const head = `${plain},latitude,longitude,time`
     const refused = refusalOf(

@@ -124,7 +124,7 @@ describe('a profile in JSON', () => {
       ...Object.values(schema.properties ?? {}),
       ...Object.values(items.properties ?? {}),
     ]
-    expect(members).toHaveLength(14)
+    expect(members).toHaveLength(16)
     for (const member of members) expect(member).toHaveProperty('description')
     expect(items.additionalProperties).toBe(false)
   })
