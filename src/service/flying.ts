@@ -1,6 +1,6 @@
 import { v7 as uuid } from 'uuid'
 import { packTrack } from '../exchange/trackRow.ts'
-import { predict, predictWithTrack } from '../planning/prediction.ts'
+import { predict } from '../planning/prediction.ts'
 import { type RunRow } from '../store/runs.ts'
 import { profileIdOf, type Airs } from './airs.ts'
 import { toFlightPlan } from './flightPlan.ts'
@@ -29,7 +29,7 @@ export function flyTrial(plan: Plan, airs: Airs): Trial {
  */
 export function flyRun(flightId: string, plan: Plan, before: Run | null, airs: Airs): FlownRun {
   const source = airs.source(plan.air)
-  const { prediction, track } = predictWithTrack(toFlightPlan(plan), source)
+  const prediction = predict(toFlightPlan(plan), source)
   const trial = trialAnswer(prediction, plan, source, now())
   const run: Run = {
     ...trial,
@@ -42,7 +42,7 @@ export function flyRun(flightId: string, plan: Plan, before: Run | null, airs: A
     flightId,
     profileId: profileIdOf(plan.air),
     answer: JSON.stringify(run),
-    track: packTrack(track),
+    track: packTrack(prediction.track),
   }
   return { run, row }
 }
