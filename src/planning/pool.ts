@@ -1,0 +1,159 @@
+import { availableParallelism } from 'node:os'
+import { Piscina } from 'piscina'
+import { NotFlyable } from '../physics/notFlyable.ts'
+import { type FlightPlan } from '../physics/flight.ts'
+import { recipeKey, type AirRecipe } from './airRecipe.ts'
+import { type Dispersion } from './dispersion.ts'
+import { MEMBER_VALUES } from './memberFlights.ts'
+import {
+  AIR_MISSING,
+  type AirOrder,
+  type MemberOrder,
+  type Refused,
+  type SummaryOrder,
+  type SurveyOrder,
+} from './planningWorker.ts'
+import { type Region } from './regions.ts'
+import { type Spread } from './spread.ts'
+import { type Survey, type TimeFigures } from './survey.ts'
+
+/** Members that one task flies: some 10 ms, so that small dispersions pass between those of large ones. */
+const MEMBERS_PER_TASK = 512
+
+/** How far a long piece of work has come, 0 to 1. */
+export type Progress = (share: number) => void
+
+/** What a dispersion is made of. */
+export interface DispersionOrder {
+  plan: FlightPlan
+  air: AirRecipe
+  spread: Spread
+  members: number
+  seed: number
+  regions: readonly Region[]
+}
+
+/** The spread is so wide that none of the members flew. */
+export class NoMemberFlies extends Error {
+  constructor() {
+    super('no member of the dispersion flies')
+    this.name = 'NoMemberFlies'
+  }
+}
+
+/** Threads that plan, so that the event loop is free to answer. */
+export class PlanningPool {
+  private readonly piscina: Piscina
+  private readonly threads: number
+
+  constructor(threads = availableParallelism()) {
+    const extension = import.meta.url.endsWith('.ts') ? '.ts' : '.js'
+    this.threads = threads
+    this.piscina = new Piscina({
+      filename: new URL(`./planningWorker${extension}`, import.meta.url).href,
+      // The sources run as they are under a loader, the build without one.
+      execArgv: extension === '.ts' ? ['--import', 'tsx'] : [],
+      minThreads: threads,
+      maxThreads: threads,
+    })
+  }
+
+  /**
+   * Flies and sums up a dispersion.
+   * @throws NotFlyable where the plan itself does not fly, NoMemberFlies where none does, and the signal's reason once it is aborted
+   */
+  async disperse(
+    order: DispersionOrder,
+    signal?: AbortSignal,
+    progress?: Progress,
+  ): Promise<Dispersion> {
+    const { plan, air, spread, members, seed, regions } = order
+    const rows = new SharedArrayBuffer(members * MEMBER_VALUES * Float64Array.BYTES_PER_ELEMENT)
+    const tasks = Math.ceil(members / MEMBERS_PER_TASK / this.threads) * this.threads
+    const each = Math.ceil(members / tasks)
+    const starts = Array.from({ length: Math.ceil(members / each) }, (_, i) => i * each)
+    await this.inTurn(starts, signal, progress, async (first) => {
+      const end = Math.min(members, first + each)
+      await this.inAir<'flown'>('fly', air, (airOrder): MemberOrder => ({
+        air: airOrder,
+        plan,
+        spread,
+        seed,
+        first,
+        end,
+        rows,
+      }))
+    })
+    const summary: SummaryOrder = { rows, spread, regions }
+    const dispersion = (await this.piscina.run(summary, { name: 'summary' })) as Dispersion | null
+    if (!dispersion) throw new NoMemberFlies()
+    return dispersion
+  }
+
+  /** Flies release times, each in its air; a time that cannot be flown has its reason instead. */
+  async survey(
+    times: readonly { air: AirRecipe; survey: Survey }[],
+    signal?: AbortSignal,
+    progress?: Progress,
+  ): Promise<(TimeFigures | NotFlyable)[]> {
+    const figures: (TimeFigures | NotFlyable)[] = []
+    await this.inTurn([...times.keys()], signal, progress, async (i) => {
+      const { air, survey } = times[i]
+      try {
+        figures[i] = await this.inAir<TimeFigures>('survey', air, (airOrder): SurveyOrder => ({
+          ...survey,
+          air: airOrder,
+        }))
+      } catch (error) {
+        if (!(error instanceof NotFlyable)) throw error
+        figures[i] = error
+      }
+    })
+    return figures
+  }
+
+  async close(): Promise<void> {
+    await this.piscina.destroy()
+  }
+
+  /** Works through items with as many under way as there are threads, so that others get their turn. */
+  private async inTurn<Item>(
+    items: readonly Item[],
+    signal: AbortSignal | undefined,
+    progress: Progress | undefined,
+    work: (item: Item) => Promise<void>,
+  ): Promise<void> {
+    let next = 0
+    let done = 0
+    const lane = async () => {
+      while (next < items.length) {
+        signal?.throwIfAborted()
+        await work(items[next++])
+        done++
+        progress?.(done / items.length)
+      }
+    }
+    await Promise.all(Array.from({ length: Math.min(this.threads, items.length) }, lane))
+    signal?.throwIfAborted()
+  }
+
+  /** Runs a task in given air, which is sent along only to a thread that does not have it yet. */
+  private async inAir<Result>(
+    name: string,
+    recipe: AirRecipe,
+    order: (air: AirOrder) => unknown,
+  ): Promise<Result> {
+    const key = recipeKey(recipe)
+    let answer = (await this.piscina.run(order({ key, recipe: null }), { name })) as
+      Result | Refused | typeof AIR_MISSING
+    if (answer === AIR_MISSING) {
+      answer = (await this.piscina.run(order({ key, recipe }), { name })) as Result | Refused
+    }
+    if (isRefused(answer)) throw new NotFlyable(answer.notFlyable)
+    return answer
+  }
+}
+
+function isRefused(answer: unknown): answer is Refused {
+  return typeof answer === 'object' && answer !== null && 'notFlyable' in answer
+}
