@@ -3,11 +3,12 @@ import { type Column } from '../physics/column.ts'
 import { type FlightPlan } from '../physics/flight.ts'
 import { NotFlyable, type NotFlyableReason } from '../physics/notFlyable.ts'
 import { columnOf, type AirRecipe } from './airRecipe.ts'
+import { positionsText } from './positionsText.ts'
 import { flyMembers, summarize, type Dispersion } from './dispersion.ts'
 import { MEMBER, MEMBER_VALUES, MemberFlights } from './memberFlights.ts'
 import { type Region } from './regions.ts'
 import { type Spread } from './spread.ts'
-import { surveyTime, type Survey, type TimeFigures } from './survey.ts'
+import { surveyTime, type Survey, type SurveyedTime } from './survey.ts'
 
 /** What runs in the threads of the pool. Nothing here keeps anything but columns of air, tabulated. */
 
@@ -55,12 +56,24 @@ export interface SummaryOrder {
   regions: readonly Region[]
 }
 
+/** A summed-up dispersion; its points stand as text, which a busy event loop need then not write. */
+export interface Summary {
+  dispersion: Dispersion
+  /** JSON of the landings as GeoJSON positions */
+  points: string
+}
+
 /** Sums up flown members; null where none flew. */
-export function summary(order: SummaryOrder): Dispersion | null {
+export function summary(order: SummaryOrder): Summary | null {
   const rows = new Float64Array(order.rows)
-  if (rows.every((value, i) => i % MEMBER_VALUES !== MEMBER.latitude || Number.isNaN(value)))
-    return null
-  return summarize(rows, order.spread, order.regions)
+  let flown = false
+  for (let at = MEMBER.latitude; at < rows.length; at += MEMBER_VALUES) {
+    flown ||= !Number.isNaN(rows[at])
+  }
+  if (!flown) return null
+  const dispersion = summarize(rows, order.spread, order.regions)
+  const points = positionsText(dispersion.landing.points)
+  return { dispersion, points }
 }
 
 export interface SurveyOrder extends Survey {
@@ -68,7 +81,7 @@ export interface SurveyOrder extends Survey {
 }
 
 /** Flies one release time. */
-export function survey(order: SurveyOrder): typeof AIR_MISSING | Refused | TimeFigures {
+export function survey(order: SurveyOrder): typeof AIR_MISSING | Refused | SurveyedTime {
   return inAir(order.air, (column) => surveyTime(order, column))
 }
 

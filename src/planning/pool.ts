@@ -3,19 +3,19 @@ import { Piscina } from 'piscina'
 import { NotFlyable } from '../physics/notFlyable.ts'
 import { type FlightPlan } from '../physics/flight.ts'
 import { recipeKey, type AirRecipe } from './airRecipe.ts'
-import { type Dispersion } from './dispersion.ts'
 import { MEMBER_VALUES } from './memberFlights.ts'
 import {
   AIR_MISSING,
   type AirOrder,
   type MemberOrder,
   type Refused,
+  type Summary,
   type SummaryOrder,
   type SurveyOrder,
 } from './planningWorker.ts'
 import { type Region } from './regions.ts'
 import { type Spread } from './spread.ts'
-import { type Survey, type TimeFigures } from './survey.ts'
+import { type Survey, type SurveyedTime } from './survey.ts'
 
 /** Members that one task flies: some 10 ms, so that small dispersions pass between those of large ones. */
 const MEMBERS_PER_TASK = 512
@@ -43,19 +43,17 @@ export class NoMemberFlies extends Error {
 
 /** Threads that plan, so that the event loop is free to answer. */
 export class PlanningPool {
-  private readonly piscina: Piscina
   private readonly threads: number
+  private piscina: Piscina | undefined
 
+  /** The threads start with the first work, or with `warmUp`. */
   constructor(threads = availableParallelism()) {
-    const extension = import.meta.url.endsWith('.ts') ? '.ts' : '.js'
     this.threads = threads
-    this.piscina = new Piscina({
-      filename: new URL(`./planningWorker${extension}`, import.meta.url).href,
-      // The sources run as they are under a loader, the build without one.
-      execArgv: extension === '.ts' ? ['--import', 'tsx'] : [],
-      minThreads: threads,
-      maxThreads: threads,
-    })
+  }
+
+  /** Starts the threads and lets each compile what it will run. */
+  async warmUp(order: DispersionOrder): Promise<void> {
+    await this.disperse({ ...order, members: 2 * MEMBERS_PER_TASK * this.threads })
   }
 
   /**
@@ -66,7 +64,7 @@ export class PlanningPool {
     order: DispersionOrder,
     signal?: AbortSignal,
     progress?: Progress,
-  ): Promise<Dispersion> {
+  ): Promise<Summary> {
     const { plan, air, spread, members, seed, regions } = order
     const rows = new SharedArrayBuffer(members * MEMBER_VALUES * Float64Array.BYTES_PER_ELEMENT)
     const tasks = Math.ceil(members / MEMBERS_PER_TASK / this.threads) * this.threads
@@ -84,10 +82,10 @@ export class PlanningPool {
         rows,
       }))
     })
-    const summary: SummaryOrder = { rows, spread, regions }
-    const dispersion = (await this.piscina.run(summary, { name: 'summary' })) as Dispersion | null
-    if (!dispersion) throw new NoMemberFlies()
-    return dispersion
+    const summing: SummaryOrder = { rows, spread, regions }
+    const summary = (await this.started().run(summing, { name: 'summary' })) as Summary | null
+    if (!summary) throw new NoMemberFlies()
+    return summary
   }
 
   /** Flies release times, each in its air; a time that cannot be flown has its reason instead. */
@@ -95,25 +93,36 @@ export class PlanningPool {
     times: readonly { air: AirRecipe; survey: Survey }[],
     signal?: AbortSignal,
     progress?: Progress,
-  ): Promise<(TimeFigures | NotFlyable)[]> {
-    const figures: (TimeFigures | NotFlyable)[] = []
+  ): Promise<(SurveyedTime | NotFlyable)[]> {
+    const surveyed: (SurveyedTime | NotFlyable)[] = []
     await this.inTurn([...times.keys()], signal, progress, async (i) => {
       const { air, survey } = times[i]
       try {
-        figures[i] = await this.inAir<TimeFigures>('survey', air, (airOrder): SurveyOrder => ({
+        surveyed[i] = await this.inAir<SurveyedTime>('survey', air, (airOrder): SurveyOrder => ({
           ...survey,
           air: airOrder,
         }))
       } catch (error) {
         if (!(error instanceof NotFlyable)) throw error
-        figures[i] = error
+        surveyed[i] = error
       }
     })
-    return figures
+    return surveyed
   }
 
   async close(): Promise<void> {
-    await this.piscina.destroy()
+    await this.piscina?.destroy()
+  }
+
+  private started(): Piscina {
+    const extension = import.meta.url.endsWith('.ts') ? '.ts' : '.js'
+    return (this.piscina ??= new Piscina({
+      filename: new URL(`./planningWorker${extension}`, import.meta.url).href,
+      // The sources run as they are under a loader, the build without one.
+      execArgv: extension === '.ts' ? ['--import', 'tsx'] : [],
+      minThreads: this.threads,
+      maxThreads: this.threads,
+    }))
   }
 
   /** Works through items with as many under way as there are threads, so that others get their turn. */
@@ -144,10 +153,10 @@ export class PlanningPool {
     order: (air: AirOrder) => unknown,
   ): Promise<Result> {
     const key = recipeKey(recipe)
-    let answer = (await this.piscina.run(order({ key, recipe: null }), { name })) as
+    let answer = (await this.started().run(order({ key, recipe: null }), { name })) as
       Result | Refused | typeof AIR_MISSING
     if (answer === AIR_MISSING) {
-      answer = (await this.piscina.run(order({ key, recipe }), { name })) as Result | Refused
+      answer = (await this.started().run(order({ key, recipe }), { name })) as Result | Refused
     }
     if (isRefused(answer)) throw new NotFlyable(answer.notFlyable)
     return answer

@@ -4,6 +4,7 @@ import { type Position } from '../physics/earth.ts'
 import { fly, type FlightPlan } from '../physics/flight.ts'
 import { disperse } from './dispersion.ts'
 import { type Spread } from './spread.ts'
+import { checkLimits, type LimitCheck, type WindowLimits } from './windows.ts'
 
 /** Height above the site at which the wind of the fill is taken, m: that of a wind mast. WMO-No. 8. */
 const MAST_HEIGHT = 10
@@ -15,6 +16,7 @@ export interface Survey {
   members: number
   spread: Spread
   seed: number
+  limits: WindowLimits
 }
 
 /** The figures of a flight at one release time, SI. */
@@ -28,8 +30,19 @@ export interface TimeFigures {
   regionArea: number | null
 }
 
+/** A release time's figures and how it stands to the limits. */
+export interface SurveyedTime {
+  figures: TimeFigures
+  checks: LimitCheck[]
+}
+
 /** Flies one release time in its air. @throws NotFlyable */
-export function surveyTime(survey: Survey, column: Column): TimeFigures {
+export function surveyTime(survey: Survey, column: Column): SurveyedTime {
+  const figures = figuresOf(survey, column)
+  return { figures, checks: checkLimits(figures, survey.plan.launch.time, survey.limits) }
+}
+
+function figuresOf(survey: Survey, column: Column): TimeFigures {
   const { plan, members, spread, seed } = survey
   const { ascent, burst, landing } = fly(plan, column)
   const air = emptyAirState()
