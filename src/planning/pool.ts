@@ -115,11 +115,9 @@ export class PlanningPool {
   }
 
   private started(): Piscina {
-    const extension = import.meta.url.endsWith('.ts') ? '.ts' : '.js'
     return (this.piscina ??= new Piscina({
-      filename: new URL(`./planningWorker${extension}`, import.meta.url).href,
-      // The sources run as they are under a loader, the build without one.
-      execArgv: extension === '.ts' ? ['--import', 'tsx'] : [],
+      filename: workerModule(),
+      execArgv: [],
       minThreads: this.threads,
       maxThreads: this.threads,
     }))
@@ -165,4 +163,10 @@ export class PlanningPool {
 
 function isRefused(answer: unknown): answer is Refused {
   return typeof answer === 'object' && answer !== null && 'notFlyable' in answer
+}
+
+/** The module that a thread loads: of the build itself, of the sources through the loader of development. */
+function workerModule(): string {
+  const built = !import.meta.url.endsWith('.ts')
+  return new URL(built ? './planningWorker.js' : './sourceWorker.js', import.meta.url).href
 }

@@ -176,15 +176,17 @@ describe('POST /v1/flights/{id}/dispersion and /v1/trials/dispersion', () => {
     const delay = monitorEventLoopDelay({ resolution: 1 })
     delay.enable()
     let finished = false
-    const large = disperse(20_000)
-      .expect(200)
-      .then(() => (finished = true))
+    // On a busy machine it may go on as a job: then it works on beside what follows all the same.
+    const large = disperse(20_000).then(({ status }) => {
+      finished = true
+      return status
+    })
     let single = 0
     while (!finished) {
       await http.post('/v1/trials').send(flightRequest()).expect(200)
       single++
     }
-    await large
+    expect([200, 202]).toContain(await large)
     delay.disable()
     expect(single).toBeGreaterThan(10)
     // The client of this test shares the loop and reads 400 kB of answer in it: more than the service's 20 ms.
@@ -234,7 +236,7 @@ describe('POST /v1/windows', () => {
     ])
     // The wind grows by 1 m/s an hour.
     expect(times.map(({ figures }) => figures?.groundWindMs)).toEqual([4, 7, 10, 13, 16])
-    expect(times.map(({ passes }) => passes)).toEqual([true, false, false, false, false])
+    expect(times.map(({ passes }) => passes)).toEqual([true, true, false, false, false])
     const failed = times[2].checks.find(({ limit }) => limit === 'groundWind')
     expect(failed).toMatchObject({ value: 10, bound: 8, margin: -2, kept: false })
     expect(ranking[0]).toBe('2026-12-05T06:00:00.000Z')
