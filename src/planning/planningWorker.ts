@@ -73,6 +73,7 @@ export function summary(order: SummaryOrder): Summary | null {
   if (!flown) return null
   const dispersion = summarize(rows, order.spread, order.regions)
   const points = positionsText(dispersion.landing.points)
+  dispersion.landing.points = new Float64Array(0) // no use in copying them across as well
   return { dispersion, points }
 }
 
