@@ -1,3 +1,4 @@
+import { dragCurve } from '../physics/dragCurves.ts'
 import { standardSource } from '../planning/airSource.ts'
 import { type PlanningPool } from '../planning/pool.ts'
 import { defaultSpread } from '../planning/spread.ts'
@@ -6,6 +7,8 @@ import { flightRequestSchema, planOf } from './schemas/plan.ts'
 
 /** Flies an invented plan, so that the first dispersion that somebody asks for is as fast as the next. */
 export async function warmUp(pool: PlanningPool): Promise<void> {
+  // This curve makes a table of itself at its first use.
+  dragCurve({ curve: 'smooth-sphere' }).reynolds(1e9)
   const request = flightRequestSchema.parse({
     launch: { latitudeDeg: 0, longitudeDeg: 0, altitudeM: 0, time: '2026-01-01T00:00:00Z' },
     balloon: { massG: 1000, ratedBurstDiameterM: 7.5 },
