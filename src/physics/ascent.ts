@@ -18,8 +18,8 @@ export interface AscendingBalloon {
   /** Volume at which the envelope bursts, m³ */
   burstVolume: number
   drag: DragCurve
-  /** Factor on the drag curve's coefficient */
-  dragFactor: number
+  /** Factor on the drag curve's coefficient; 1 unless given */
+  dragFactor?: number
 }
 
 /** How an ascent ended, SI. The whereabouts passed in stand at the burst. */
@@ -58,7 +58,7 @@ function risingReynolds(
   if (!(lift > 0)) return 0
   // ½·ρ·Cd·(πD²/4)·w² = F with w = Re·μ/(ρD) leaves Cd·Re² = 8·F·ρ/(π·μ²).
   const best = (8 * lift * air.density) / (Math.PI * air.viscosity * air.viscosity)
-  return balloon.drag.reynolds(best / balloon.dragFactor)
+  return balloon.drag.reynolds(best / (balloon.dragFactor ?? 1))
 }
 
 function speed(reynolds: number, air: AirState, volume: number): number {
@@ -194,7 +194,7 @@ class Rise {
   /** Through slabs [first, end), all of each: the same as a step through each, from the tables. */
   wholeSlabs(first: number, end: number): void {
     const { balloon, column, at, departure } = this
-    const { fill, mass, dragFactor } = balloon
+    const { fill, mass, dragFactor = 1 } = balloon
     const { displacedPerMole, bestPerLift, slowness } = column.rise(balloon.temperatureOffset)
     const { windEast, windNorth } = column
     for (let slab = first; slab < end; slab++) {

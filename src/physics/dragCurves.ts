@@ -132,6 +132,7 @@ class SmoothSphereDrag implements DragCurve {
   /** Grid of ln Re, and the highest ln(Cd·Re²) met up to each: its crossings are the slowest speeds. */
   private readonly grid = Float64Array.from({ length: 1601 }, (_, i) => -12 + i * 0.025)
   private readonly envelope = new Float64Array(this.grid.length)
+  private table: InverseTable | undefined
 
   constructor() {
     let highest = -Infinity
@@ -155,6 +156,21 @@ class SmoothSphereDrag implements DragCurve {
 
   reynolds(best: number): number {
     const target = Math.log(best)
+    const place = (target - INVERSE_FROM) / INVERSE_STEP
+    const cell = Math.floor(place)
+    if (!(cell >= 0 && cell < INVERSE_CELLS)) return Math.exp(this.search(target))
+    const table = (this.table ??= new InverseTable((value) => this.search(value)))
+    return Math.exp(
+      table.smooth[cell] ? table.interpolate(cell, place - cell) : this.search(target),
+    )
+  }
+
+  reynoldsOfAll(best: Float64Array, reynolds: Float64Array, first: number, end: number): void {
+    for (let i = first; i < end; i++) reynolds[i] = this.reynolds(best[i])
+  }
+
+  /** The lowest ln Re with ln(Cd·Re²) = `target`, by bisection. */
+  private search(target: number): number {
     let low = 0
     let high = this.grid.length - 1
     while (high - low > 1) {
@@ -169,15 +185,45 @@ class SmoothSphereDrag implements DragCurve {
       if (this.logBest(middle) < target) left = middle
       else right = middle
     }
-    return Math.exp((left + right) / 2)
-  }
-
-  reynoldsOfAll(best: Float64Array, reynolds: Float64Array, first: number, end: number): void {
-    for (let i = first; i < end; i++) reynolds[i] = this.reynolds(best[i])
+    return (left + right) / 2
   }
 
   private logBest(x: number): number {
     return 2 * x + Math.log(this.coefficient(Math.exp(x)))
+  }
+}
+
+/** Where the table of ln Re begins in ln(Cd·Re²), its steps and its cells: Re from 1e3 to 1e8. */
+const INVERSE_FROM = 13
+const INVERSE_STEP = 0.01
+const INVERSE_CELLS = 2300
+
+/** ln Re at equal steps of ln(Cd·Re²): cubic through four neighbours, but for cells near a jump. */
+class InverseTable {
+  /** 1 where the cubic meets what the search finds, to 1e-8. */
+  readonly smooth = new Uint8Array(INVERSE_CELLS)
+  /** From one step before the first cell to one after the last. */
+  private readonly values: Float64Array
+
+  constructor(search: (target: number) => number) {
+    this.values = Float64Array.from({ length: INVERSE_CELLS + 3 }, (_, i) =>
+      search(INVERSE_FROM + (i - 1) * INVERSE_STEP),
+    )
+    for (let cell = 0; cell < INVERSE_CELLS; cell++) {
+      const found = search(INVERSE_FROM + (cell + 0.5) * INVERSE_STEP)
+      this.smooth[cell] = Math.abs(this.interpolate(cell, 0.5) - found) < 1e-8 ? 1 : 0
+    }
+  }
+
+  /** Lagrange's cubic in the cell, `s` from 0 to 1 (Abramowitz and Stegun, eq. 25.2.13). */
+  interpolate(cell: number, s: number): number {
+    const { values } = this
+    return (
+      (-s * (s - 1) * (s - 2) * values[cell]) / 6 +
+      ((s * s - 1) * (s - 2) * values[cell + 1]) / 2 -
+      (s * (s + 1) * (s - 2) * values[cell + 2]) / 2 +
+      (s * (s * s - 1) * values[cell + 3]) / 6
+    )
   }
 }
 

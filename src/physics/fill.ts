@@ -26,18 +26,35 @@ export function fill(
   gas: Gas,
   site: AirState,
 ): Fill {
-  const molarMass = gasMolarMass(gas)
-  const grossLift = neckLift + balloonMass
-  // Archimedes: the displaced air less the gas carries the gross lift.
-  const volume = grossLift / (site.density - gasDensity(molarMass, site.temperature, site.pressure))
-  const moles = (site.pressure * volume) / (MOLAR_GAS_CONSTANT * site.temperature) // ideal gas law
-  return {
+  const filled: Fill = {
     neckLift,
-    grossLift,
-    freeLift: neckLift - payloadMass,
-    volume,
-    diameter: sphereDiameter(volume),
-    gasMass: moles * molarMass,
-    moles,
+    grossLift: 0,
+    freeLift: 0,
+    volume: 0,
+    diameter: 0,
+    gasMass: 0,
+    moles: 0,
   }
+  refill(filled, neckLift, balloonMass, payloadMass, gasMolarMass(gas), site)
+  return filled
+}
+
+/** Makes `out` the fill with gas of `molarMass` kg/mol: `fill` for many flights. */
+export function refill(
+  out: Fill,
+  neckLift: number,
+  balloonMass: number,
+  payloadMass: number,
+  molarMass: number,
+  site: AirState,
+): void {
+  out.neckLift = neckLift
+  out.grossLift = neckLift + balloonMass
+  out.freeLift = neckLift - payloadMass
+  // Archimedes: the displaced air less the gas carries the gross lift.
+  out.volume =
+    out.grossLift / (site.density - gasDensity(molarMass, site.temperature, site.pressure))
+  out.diameter = sphereDiameter(out.volume)
+  out.moles = (site.pressure * out.volume) / (MOLAR_GAS_CONSTANT * site.temperature) // ideal gas law
+  out.gasMass = out.moles * molarMass
 }

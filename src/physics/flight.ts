@@ -74,7 +74,6 @@ export function fly(plan: FlightPlan, column: Column, recorder?: PathRecorder): 
     temperatureOffset: gas.temperatureOffset,
     burstVolume: sphereVolume(balloon.ratedBurstDiameter),
     drag: dragCurve(plan.drag),
-    dragFactor: 1,
   }
   const releaseVolume = gasVolume(ascending, air.temperature, air.pressure)
   const fullestVolume = Math.max(filled.volume, releaseVolume)

@@ -1,5 +1,6 @@
 import { Column } from '../physics/column.ts'
 import { standardAir } from '../physics/standardAtmosphere.ts'
+import { type AirRecipe } from './airRecipe.ts'
 
 /** Where the air of a prediction comes from, as much as its cautions and its answer need to know. */
 export interface AirSource {
@@ -12,6 +13,8 @@ export interface AirSource {
   /** Where it was observed, radians; null where it has no place */
   position: { latitude: number; longitude: number } | null
   column: Column
+  /** What the column is made of, for other threads to make it again */
+  recipe: AirRecipe
 }
 
 /** The standard atmosphere, still. */
@@ -22,4 +25,5 @@ export const standardSource: AirSource = {
   validAt: null,
   position: null,
   column: new Column(standardAir),
+  recipe: { kind: 'standard' },
 }

@@ -43,13 +43,15 @@ export class Airs {
       throw new Problem(422, message, [{ path: '/air/id', message }])
     }
     const { name, validAt, latitude, longitude } = row
+    const levels = JSON.parse(row.levels) as SoundingLevel[]
     const source: AirSource = {
       kind: 'profile',
       id,
       name,
       validAt,
       position: latitude === null || longitude === null ? null : { latitude, longitude },
-      column: new Column(new ProfileAir(JSON.parse(row.levels) as SoundingLevel[])),
+      column: new Column(new ProfileAir(levels)),
+      recipe: { kind: 'profile', id, levels },
     }
     this.kept.set(id, source)
     return source

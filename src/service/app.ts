@@ -4,20 +4,29 @@ import swagger from '@fastify/swagger'
 import swaggerUi from '@fastify/swagger-ui'
 import fastify, { type FastifyBaseLogger, type FastifyInstance } from 'fastify'
 import { type z } from 'zod'
+import { PlanningPool } from '../planning/pool.ts'
 import { type Store } from '../store/store.ts'
 import { Airs } from './airs.ts'
 import { acceptJson } from './bodies.ts'
 import { type App, type Context } from './context.ts'
+import { dispersionWork } from './dispersions.ts'
+import { JobRunner } from './jobRunner.ts'
 import { describeRoute, describeSchemas, openApiInfo } from './openApi.ts'
 import { answerError, faultyRequest, Problem, sendProblem } from './problems.ts'
+import { dispersionRoutes } from './routes/dispersions.ts'
+import { fillRoutes } from './routes/fills.ts'
 import { flightRoutes } from './routes/flights.ts'
 import { healthRoutes } from './routes/health.ts'
+import { jobRoutes } from './routes/jobs.ts'
 import { outcomeRoutes } from './routes/outcomes.ts'
 import { profileRoutes } from './routes/profiles.ts'
 import { rerunRoutes } from './routes/reruns.ts'
 import { runRoutes } from './routes/runs.ts'
 import { trialRoutes } from './routes/trials.ts'
+import { windowRoutes } from './routes/windows.ts'
 import { schemaFaults } from './schemaFaults.ts'
+import { warmUp } from './warmUp.ts'
+import { windowsWork } from './windows.ts'
 
 /** What pages may load: nothing from elsewhere. Plain HTTP is served, so nothing forces TLS. */
 const securityHeaders = {
@@ -37,10 +46,16 @@ const securityHeaders = {
   },
 }
 
+export interface AppOptions {
+  /** Start the planning threads with the service, not with the first request that needs them */
+  warmPlanning?: boolean
+}
+
 /** Builds the service on a store; it is not listening yet. */
 export async function buildApp(
   store: Store,
   logger: FastifyBaseLogger | false,
+  options: AppOptions = {},
 ): Promise<FastifyInstance> {
   const app = fastify({
     ...(logger ? { loggerInstance: logger } : {}),
@@ -73,13 +88,26 @@ export async function buildApp(
   await app.register(swaggerUi, { routePrefix: '/docs' })
 
   // The routes
-  const context: Context = { store, airs: new Airs(store.profiles) }
+  const airs = new Airs(store.profiles)
+  const pool = new PlanningPool()
+  const jobs = new JobRunner(store, {
+    dispersion: dispersionWork(airs, pool),
+    windows: windowsWork(airs, pool),
+  })
+  app.addHook('preClose', () => jobs.close())
+  app.addHook('onClose', () => pool.close())
+  if (options.warmPlanning) app.addHook('onListen', () => warmUp(pool))
+  const context: Context = { store, airs, jobs }
   const typed = app as unknown as App
   flightRoutes(typed, context)
   runRoutes(typed, context)
   rerunRoutes(typed, context)
   trialRoutes(typed, context)
   outcomeRoutes(typed, context)
+  fillRoutes(typed, context)
+  dispersionRoutes(typed, context)
+  windowRoutes(typed, context)
+  jobRoutes(typed, context)
   await app.register((scope) => {
     profileRoutes(scope, context)
     return Promise.resolve()

@@ -9,11 +9,13 @@ import {
 import { type z } from 'zod'
 import { type Store } from '../store/store.ts'
 import { type Airs } from './airs.ts'
+import { type JobRunner } from './jobRunner.ts'
 
 /** What the routes work with. */
 export interface Context {
   store: Store
   airs: Airs
+  jobs: JobRunner
 }
 
 /** Requests have the types of their schemas; answers are checked against theirs by the tests. */

@@ -15,6 +15,8 @@ export const openApiInfo = {
     { name: 'Flights', description: 'Planned flights, and what became of them' },
     { name: 'Runs', description: 'Stored predictions and their tracks' },
     { name: 'Trials', description: 'Predictions that are not stored' },
+    { name: 'Planning', description: 'How much gas, how sure, and when' },
+    { name: 'Jobs', description: 'Calculations that take longer than two seconds' },
     { name: 'Soundings', description: 'Uploaded profiles of the air' },
     { name: 'Service', description: 'The service itself' },
   ],

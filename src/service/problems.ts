@@ -2,7 +2,10 @@ import { STATUS_CODES } from 'node:http'
 import { type FastifyError, type FastifyReply, type FastifyRequest } from 'fastify'
 import { NotFlyable } from '../physics/notFlyable.ts'
 import { BadSounding } from '../soundings/badSounding.ts'
+import { UnreachableTarget } from '../planning/fillForTarget.ts'
+import { NoMemberFlies } from '../planning/pool.ts'
 import { describeNotFlyable } from './notFlyableAnswer.ts'
+import { describeUnreachable } from './unreachableAnswer.ts'
 
 /** One thing that is wrong, and where: a JSON pointer into the body, or `?name` of the query. */
 export interface Fault {
@@ -37,19 +40,25 @@ export function answerError(error: FastifyError, request: FastifyRequest, reply:
 
 /** Answers with a problem. */
 export function sendProblem(reply: FastifyReply, problem: Problem) {
-  const { status, message, faults } = problem
   return reply
-    .status(status)
+    .status(problem.status)
     .type('application/problem+json')
-    .send(
-      JSON.stringify({
-        type: 'about:blank',
-        title: STATUS_CODES[status] ?? 'Error',
-        status,
-        detail: message,
-        ...(faults.length > 0 ? { errors: faults } : {}),
-      }),
-    )
+    .send(JSON.stringify(bodyOf(problem)))
+}
+
+/** The RFC 9457 body that an error is answered with. */
+export function problemBody(error: unknown) {
+  return bodyOf(problemOf(error as FastifyError))
+}
+
+function bodyOf({ status, message, faults }: Problem) {
+  return {
+    type: 'about:blank',
+    title: STATUS_CODES[status] ?? 'Error',
+    status,
+    detail: message,
+    ...(faults.length > 0 ? { errors: faults } : {}),
+  }
 }
 
 function problemOf(error: FastifyError): Problem {
@@ -59,6 +68,11 @@ function problemOf(error: FastifyError): Problem {
     return new Problem(422, fault.message, [fault])
   }
   if (error instanceof BadSounding) return soundingProblem(error)
+  if (error instanceof UnreachableTarget) return faultyRequest(422, [describeUnreachable(error)])
+  if (error instanceof NoMemberFlies) {
+    const message = 'is so wide that none of the members flies: narrow it'
+    return faultyRequest(422, [{ path: '/spread', message }])
+  }
   const status = error.statusCode ?? 500
   if (status === 415) return new Problem(415, 'This content type is not read here; JSON is.')
   if (status < 500) return new Problem(status, error.message)

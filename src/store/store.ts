@@ -3,6 +3,7 @@ import { FirstAnswers } from './firstAnswers.ts'
 import { Flights } from './flights.ts'
 import { GroupCommit } from './groupCommit.ts'
 import { openDatabase } from './database.ts'
+import { Jobs } from './jobs.ts'
 import { Profiles } from './profiles.ts'
 import { Runs } from './runs.ts'
 
@@ -12,6 +13,7 @@ export class Store {
   readonly runs: Runs
   readonly profiles: Profiles
   readonly firstAnswers: FirstAnswers
+  readonly jobs: Jobs
   private readonly database: Database.Database
   private readonly group: GroupCommit
 
@@ -23,6 +25,7 @@ export class Store {
     this.runs = new Runs(this.database)
     this.profiles = new Profiles(this.database)
     this.firstAnswers = new FirstAnswers(this.database)
+    this.jobs = new Jobs(this.database)
   }
 
   /**

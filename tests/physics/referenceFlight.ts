@@ -1,4 +1,5 @@
-import { Solver } from 'odex'
+import { createRequire } from 'node:module'
+import type { Solver as OdexSolver } from './odex.d.ts'
 import { emptyAirState, type ColumnAir } from '../../src/physics/air.ts'
 import { gasVolume, riseRate, type AscendingBalloon } from '../../src/physics/ascent.ts'
 import { dragCurve } from '../../src/physics/dragCurves.ts'
@@ -7,6 +8,9 @@ import { fill } from '../../src/physics/fill.ts'
 import { type FlightPlan } from '../../src/physics/flight.ts'
 import { sphereVolume } from '../../src/physics/gas.ts'
 import { dragArea } from '../../src/physics/parachute.ts'
+
+/** Required, not imported: what the package's own sources say of its types does not compile here. */
+const { Solver } = createRequire(import.meta.url)('odex') as { Solver: typeof OdexSolver }
 
 /** WGS 84, NIMA TR8350.2. */
 const A = 6_378_137
@@ -22,12 +26,13 @@ export interface ReferenceEnd {
 
 /**
  * The model's equations as they stand in the documents, integrated by a general-purpose solver
- * (odex: Hairer and Wanner's ODEX) from break to break of the air at a tolerance of 1e-10: slow, and
+ * (odex: Hairer and Wanner's ODEX) from break to break of the air, at a tolerance of 1e-10 unless given: slow, and
  * nothing in common with how the program flies but the air and the drag curve.
  */
 export function referenceFlight(
   plan: FlightPlan,
   air: ColumnAir,
+  tolerance = 1e-10,
 ): { burst: ReferenceEnd; landing: ReferenceEnd } {
   const state = emptyAirState()
   air.sampleAltitude(plan.launch.altitude, state)
@@ -52,7 +57,7 @@ export function referenceFlight(
     const w = riseRate(balloon, state, z)
     return [1 / w, ...turn(latitude, z, state.windEast, state.windNorth).map((rate) => rate / w)]
   }
-  y = piecewise(climb, plan.launch.altitude, burstAltitude, y, air)
+  y = piecewise(climb, plan.launch.altitude, burstAltitude, y, air, tolerance)
   const burst = end(y, burstAltitude)
   air.sampleAltitude(burstAltitude, state)
   const rate = riseRate(balloon, state, burstAltitude)
@@ -67,7 +72,13 @@ export function referenceFlight(
     return [w, acceleration(z, w), ...turn(latitude, z, state.windEast, state.windNorth)]
   }
   const turning = 3
-  const top = solve(fall, 0, turning, [burstAltitude, rate, burst.latitude, burst.longitude])
+  const top = solve(
+    fall,
+    0,
+    turning,
+    [burstAltitude, rate, burst.latitude, burst.longitude],
+    tolerance,
+  )
   // … then in altitude.
   const sink = (altitude: number, [, speed, north]: number[]) => {
     air.sampleAltitude(altitude, state)
@@ -80,6 +91,7 @@ export function referenceFlight(
     plan.landingAltitude,
     [burst.elapsed + turning, ...top.slice(1)],
     air,
+    tolerance,
   )
   return { burst, landing: end([elapsed, latitude, longitude], plan.landingAltitude) }
 }
@@ -93,21 +105,28 @@ function turn(latitude: number, z: number, east: number, north: number): [number
   return [north / (meridional + z), east / ((primeVertical + z) * Math.cos(latitude))]
 }
 
-function piecewise(f: Derivative, from: number, to: number, y: number[], air: ColumnAir): number[] {
+function piecewise(
+  f: Derivative,
+  from: number,
+  to: number,
+  y: number[],
+  air: ColumnAir,
+  tolerance: number,
+): number[] {
   const [low, high] = [Math.min(from, to), Math.max(from, to)]
   const stops = [...air.breakAltitudes].filter((stop) => stop > low + 1e-6 && stop < high - 1e-6)
   if (to < from) stops.reverse()
   let x = from
   for (const stop of [...stops, to]) {
-    y = solve(f, x, stop, y)
+    y = solve(f, x, stop, y, tolerance)
     x = stop
   }
   return y
 }
 
-function solve(f: Derivative, from: number, to: number, y: number[]): number[] {
+function solve(f: Derivative, from: number, to: number, y: number[], tolerance: number): number[] {
   const solver = new Solver(y.length)
-  solver.absoluteTolerance = solver.relativeTolerance = 1e-10
+  solver.absoluteTolerance = solver.relativeTolerance = tolerance
   solver.maxSteps = 1_000_000
   solver.initialStepSize = Math.min(1, Math.abs(to - from) / 10)
   const solution = solver.solve(f, from, y, to)
