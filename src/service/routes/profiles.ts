@@ -30,7 +30,13 @@ import { degrees, isoTime, seconds } from '../units.ts'
 /** Largest upload, bytes. */
 const UPLOAD_LIMIT = 20_000_000
 
-const UPLOAD_TYPES = ['application/json', 'text/csv', 'text/plain', 'application/octet-stream']
+const UPLOAD_TYPES = [
+  'application/json',
+  'text/csv',
+  'text/plain',
+  'application/bufr',
+  'application/octet-stream',
+]
 
 const tags = ['Soundings']
 
@@ -51,7 +57,8 @@ export function profileRoutes(app: App, { store, airs }: Context): void {
       schema: {
         tags,
         summary: 'Upload soundings',
-        description: 'JSON, CSV or IGRA v2 text; the content decides unless `?format=` does.',
+        description:
+          'JSON, CSV, IGRA v2 text, TEMP text (FM 35) or BUFR (FM 94); the content decides unless `?format=` does.',
         headers: creatingHeaders,
         querystring: uploadQuery,
         body: {
@@ -59,6 +66,7 @@ export function profileRoutes(app: App, { store, airs }: Context): void {
             'application/json': { schema: profileSchema },
             'text/csv': { schema: z.string() },
             'text/plain': { schema: z.string() },
+            'application/bufr': { schema: z.string() },
             'application/octet-stream': { schema: z.string() },
           },
         },
@@ -74,6 +82,7 @@ export function profileRoutes(app: App, { store, airs }: Context): void {
         const bytes = request.body
         if (!Buffer.isBuffer(bytes)) throw new Problem(400, 'The body is empty: send a sounding.')
         const rows = readSoundings(bytes, {
+          receivedAt: Date.now() / 1000,
           ...(name === undefined ? {} : { name }),
           ...(validAt === undefined ? {} : { validAt: seconds(validAt) }),
           ...(format === undefined ? {} : { format }),
