@@ -26,23 +26,22 @@ const BYTES = 4 * FIELDS
 /** Packs a track for storage: eight little-endian 32-bit integers a point. */
 export function packTrack(points: readonly TrackPoint[]): Buffer {
   const packed = Buffer.alloc(points.length * BYTES)
-  points.forEach((point, index) => {
+  let offset = 0
+  const write = (value: number) => {
+    offset = packed.writeInt32LE(Math.round(value), offset)
+  }
+  for (const point of points) {
     const { windEast, windNorth } = point
     const from = (Math.atan2(-windEast, -windNorth) / DEGREE + 360) % 360
-    const values = [
-      point.elapsed * 1e3,
-      (point.latitude / DEGREE) * 1e7,
-      (point.longitude / DEGREE) * 1e7,
-      point.altitude * 1e3,
-      point.verticalSpeed * 1e3,
-      Math.round(from * 100) % 36_000,
-      Math.hypot(windEast, windNorth) * 1e3,
-      PHASES.indexOf(point.phase),
-    ]
-    values.forEach((value, field) =>
-      packed.writeInt32LE(Math.round(value), index * BYTES + field * 4),
-    )
-  })
+    write(point.elapsed * 1e3)
+    write((point.latitude / DEGREE) * 1e7)
+    write((point.longitude / DEGREE) * 1e7)
+    write(point.altitude * 1e3)
+    write(point.verticalSpeed * 1e3)
+    write(Math.round(from * 100) % 36_000)
+    write(Math.hypot(windEast, windNorth) * 1e3)
+    write(PHASES.indexOf(point.phase))
+  }
   return packed
 }
 

@@ -21,6 +21,9 @@ export interface PathRecorder {
 /** How far, m, a recorded path may bend away from the straight line between two recorded points. */
 const RECORDED_BEND = 15
 
+/** A point is left out while the path since the last one told can have bent by no more than this, m. */
+const UNTOLD_BEND = 5
+
 const air = emptyAirState()
 
 /**
@@ -41,15 +44,19 @@ export function recordStep(
   const duration = to.elapsed - from.elapsed
   const pace = duration / (to.altitude - from.altitude)
   const at = { ...from }
+  let told = from.elapsed
+  let turned = 0
   column.sampleAltitude(from.altitude, air)
   for (const altitude of breaksBetween(column, from.altitude, to.altitude)) {
     const { windEast, windNorth } = air
     column.sampleAltitude(altitude, air)
-    const [changeEast, changeNorth] = [air.windEast - windEast, air.windNorth - windNorth]
+    const changeEast = air.windEast - windEast
+    const changeNorth = air.windNorth - windNorth
     const start = at.altitude
     const wait = pace * (altitude - start)
     // A velocity that changes steadily by Δ over a time t bends a path from its chord by Δ·t/8.
-    const bend = (Math.hypot(changeEast, changeNorth) * wait) / 8
+    const change = Math.hypot(changeEast, changeNorth)
+    const bend = (change * wait) / 8
     const parts = Math.max(1, Math.ceil(Math.sqrt(bend / RECORDED_BEND)))
     for (let part = 1; part <= parts; part++) {
       const middle = (part - 0.5) / parts
@@ -63,7 +70,11 @@ export function recordStep(
       )
       at.altitude = height
       at.elapsed += time
-      if (height !== to.altitude) {
+      turned += change / parts
+      // A velocity that ranges over r bends a path of duration t from its chord by at most r·t/4.
+      if (height !== to.altitude && turned * (at.elapsed - told) > 4 * UNTOLD_BEND) {
+        told = at.elapsed
+        turned = 0
         const share = (at.elapsed - from.elapsed) / duration
         recorder.record(at, fromSpeed + share * (toSpeed - fromSpeed), between)
       }
@@ -74,7 +85,8 @@ export function recordStep(
 
 /** The altitudes between two others where the air breaks, in the order of flight, and the second. */
 function breaksBetween({ breakAltitudes }: ColumnAir, from: number, to: number): number[] {
-  const [low, high] = [Math.min(from, to), Math.max(from, to)]
+  const low = Math.min(from, to)
+  const high = Math.max(from, to)
   const breaks: number[] = []
   for (let i = firstAbove(breakAltitudes, low); breakAltitudes[i] < high; i++) {
     breaks.push(breakAltitudes[i])
