@@ -131,6 +131,8 @@ class Rise {
   private column!: Column
   private at!: Whereabouts
   private departure: WindDeparture | undefined
+  /** Where it was asked for last, m/s */
+  private rate = 0
 
   begin(
     balloon: AscendingBalloon,
@@ -158,7 +160,8 @@ class Rise {
   /** Steady rate of ascent here, m/s. */
   rateHere(): number {
     this.column.air.sampleAltitude(this.at.altitude, pointAir)
-    return riseRate(this.balloon, pointAir, this.at.altitude)
+    this.rate = riseRate(this.balloon, pointAir, this.at.altitude)
+    return this.rate
   }
 
   /** Up to `top` m within one slab, in the mean air of the step; returns the rate of ascent, m/s. */
@@ -186,9 +189,9 @@ class Rise {
   recordedStep(slab: number, top: number, recorder: PathRecorder, phase: Phase): void {
     const { at, column } = this
     const from = { ...at }
-    const fromRate = this.rateHere()
+    const fromRate = this.rate
     this.step(slab, top)
-    recordStep(recorder, column.air, from, fromRate, at, this.rateHere(), phase)
+    recordStep(recorder, column, from, fromRate, at, this.rateHere(), phase)
   }
 
   /** Through slabs [first, end), all of each: the same as a step through each, from the tables. */

@@ -46,6 +46,10 @@ export class Column {
   readonly windEast: Float64Array
   readonly windNorth: Float64Array
 
+  /** Wind at each of the air's breaks, m/s. */
+  readonly breakEast: Float64Array
+  readonly breakNorth: Float64Array
+
   private readonly means: Float64Array
   /** The part of each slab asked for last: many flights leave from, or land at, one altitude. */
   private readonly parts: (MeanPart | undefined)[]
@@ -67,7 +71,15 @@ export class Column {
     this.means = new Float64Array(count * 4)
     this.parts = Array<undefined>(count).fill(undefined)
 
+    this.breakEast = new Float64Array(air.breakAltitudes.length)
+    this.breakNorth = new Float64Array(air.breakAltitudes.length)
+
     const state = emptyAirState()
+    air.breakAltitudes.forEach((altitude, index) => {
+      air.sampleAltitude(altitude, state)
+      this.breakEast[index] = state.windEast
+      this.breakNorth[index] = state.windNorth
+    })
     for (let edge = 0; edge <= count; edge++) {
       air.sampleAltitude(this.altitude(edge), state)
       this.edgeTemperature[edge] = state.temperature

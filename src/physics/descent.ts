@@ -72,7 +72,7 @@ export function descend(
     fall.slabStep(slab, to)
     if (recorder) {
       const phase = to > landingAltitude ? 'descent' : 'landing'
-      recordStep(recorder, column.air, from, -fromSpeed, at, -fall.speed, phase)
+      recordStep(recorder, column, from, -fromSpeed, at, -fall.speed, phase)
     }
   }
   end.peakSpeed = Math.sqrt(fall.peakSquare)

@@ -1,5 +1,5 @@
-import { emptyAirState, type ColumnAir } from './air.ts'
-import { firstAbove } from './column.ts'
+import { emptyAirState } from './air.ts'
+import { firstAbove, type Column } from './column.ts'
 import { drift, type Position } from './earth.ts'
 
 /** Where the flight train is, while it flies. Mutable: one per flight, moved along by ascent and descent. */
@@ -33,7 +33,7 @@ const air = emptyAirState()
  */
 export function recordStep(
   recorder: PathRecorder,
-  column: ColumnAir,
+  column: Column,
   from: Whereabouts,
   fromSpeed: number,
   to: Whereabouts,
@@ -46,12 +46,21 @@ export function recordStep(
   const at = { ...from }
   let told = from.elapsed
   let turned = 0
-  column.sampleAltitude(from.altitude, air)
-  for (const altitude of breaksBetween(column, from.altitude, to.altitude)) {
-    const { windEast, windNorth } = air
-    column.sampleAltitude(altitude, air)
-    const changeEast = air.windEast - windEast
-    const changeNorth = air.windNorth - windNorth
+  column.air.sampleAltitude(to.altitude, air)
+  const { windEast: toEast, windNorth: toNorth } = air
+  column.air.sampleAltitude(from.altitude, air)
+  let { windEast, windNorth } = air
+  const { breakAltitudes } = column.air
+  const upwards = to.altitude > from.altitude
+  const first = firstAbove(breakAltitudes, Math.min(from.altitude, to.altitude))
+  const end = firstAtLeast(breakAltitudes, Math.max(from.altitude, to.altitude), first)
+  for (let step = 0; step <= end - first; step++) {
+    // The breaks in the order of flight, then the end.
+    const index = upwards ? first + step : end - 1 - step
+    const last = step === end - first
+    const altitude = last ? to.altitude : breakAltitudes[index]
+    const changeEast = (last ? toEast : column.breakEast[index]) - windEast
+    const changeNorth = (last ? toNorth : column.breakNorth[index]) - windNorth
     const start = at.altitude
     const wait = pace * (altitude - start)
     // A velocity that changes steadily by Δ over a time t bends a path from its chord by Δ·t/8.
@@ -79,19 +88,15 @@ export function recordStep(
         recorder.record(at, fromSpeed + share * (toSpeed - fromSpeed), between)
       }
     }
+    windEast += changeEast
+    windNorth += changeNorth
   }
   recorder.record(to, toSpeed, phase)
 }
 
-/** The altitudes between two others where the air breaks, in the order of flight, and the second. */
-function breaksBetween({ breakAltitudes }: ColumnAir, from: number, to: number): number[] {
-  const low = Math.min(from, to)
-  const high = Math.max(from, to)
-  const breaks: number[] = []
-  for (let i = firstAbove(breakAltitudes, low); breakAltitudes[i] < high; i++) {
-    breaks.push(breakAltitudes[i])
-  }
-  if (to < from) breaks.reverse()
-  breaks.push(to)
-  return breaks
+/** Index of the first of ascending `values`, from index `from` on, that is `value` or more. */
+function firstAtLeast(values: Float64Array, value: number, from: number): number {
+  let index = from
+  while (index < values.length && values[index] < value) index++
+  return index
 }
