@@ -9,7 +9,7 @@ export interface EarthShape {
 }
 
 /** Semi-major and semi-minor axis, m, of the fixed shapes of WMO code table 3.2. */
-const SHAPES: Readonly<Record<number, readonly [number, number]>> = {
+const SHAPES: Readonly<Record<number, readonly [number, number] | undefined>> = {
   0: [6_367_470, 6_367_470],
   2: [6_378_160, 6_356_775],
   4: [6_378_137, 6_356_752.314],

@@ -16,7 +16,10 @@ export interface MessageLimits {
   gapBytes: number
 }
 
-const DEFAULT_LIMITS: MessageLimits = { messageBytes: 128 * 2 ** 20, gapBytes: 64 * 2 ** 10 }
+export const DEFAULT_MESSAGE_LIMITS: MessageLimits = {
+  messageBytes: 128 * 2 ** 20,
+  gapBytes: 64 * 2 ** 10,
+}
 
 /** Octets 1 to 16 hold all that tells where a message ends, in every edition. */
 const INDICATOR_BYTES = 16
@@ -31,10 +34,9 @@ const SEVENS = [0x37, 0x37, 0x37, 0x37] as const
  */
 export async function* gribMessages(
   chunks: AsyncIterable<Uint8Array>,
-  limits: MessageLimits = DEFAULT_LIMITS,
+  limits: MessageLimits = DEFAULT_MESSAGE_LIMITS,
 ): AsyncGenerator<GribMessage> {
-  let held: Uint8Array = new Uint8Array(0)
-  /** Where `held` begins in the file. */
+  /** Where the bytes not yet dealt with begin in the file. */
   let offset = 0
   let gap = 0
   let found = false
@@ -48,7 +50,7 @@ export async function* gribMessages(
     parts.push(chunk)
     partBytes += chunk.length
     if (partBytes < wanted) continue
-    held = parts.length === 1 ? chunk : joined(parts, partBytes)
+    let held = joined(parts, partBytes)
 
     let at = 0
     wanted = INDICATOR_BYTES

@@ -17,8 +17,9 @@ declare module '@cornerstonejs/codec-openjpeg/decodewasmjs' {
     J2KDecoder: new () => Decoder
     HEAPU8: Uint8Array
   }
-  export default function openJpeg(options: {
+  function openJpeg(options: {
     print: (line: string) => void
     printErr: (line: string) => void
   }): Promise<OpenJpeg>
+  export { openJpeg as default }
 }

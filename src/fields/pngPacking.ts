@@ -8,7 +8,7 @@ const SIGNATURE_BYTES = 8
 const CHUNK_BYTES = 12
 
 /** Samples of a pixel by PNG colour type (ISO/IEC 15948, table 11.1): grey, RGB, grey+alpha, RGBA. */
-const CHANNELS: Readonly<Record<number, number>> = { 0: 1, 2: 3, 4: 2, 6: 4 }
+const CHANNELS: Readonly<Record<number, number | undefined>> = { 0: 1, 2: 3, 4: 2, 6: 4 }
 
 /**
  * Decodes data template 7.41: a PNG image whose pixels are the packed integers, all bits of all samples

@@ -44,7 +44,7 @@ const QUANTITIES: Readonly<Record<string, { quantity: Quantity; unit: number }>>
 }
 
 /** Code table 4.4: seconds in a unit of time. Months and longer have no fixed length. */
-const TIME_UNITS: Readonly<Record<number, number>> = {
+const TIME_UNITS: Readonly<Record<number, number | undefined>> = {
   0: 60,
   1: 3600,
   2: 86_400,

@@ -1,0 +1,178 @@
+import {
+  airDensity,
+  virtualTemperature,
+  viscosity,
+  vapourPressure,
+  type Air,
+  type AirState,
+  type AltitudeSpan,
+} from '../physics/air.ts'
+import { DRY_AIR_GAS_CONSTANT, STANDARD_GRAVITY } from '../physics/constants.ts'
+import { geometricAltitude, geopotentialHeight } from '../physics/earth.ts'
+import { type FieldFile } from './fieldFile.ts'
+import { FieldTiles } from './fieldTiles.ts'
+import { LAPSE_BELOW } from './missingLevels.ts'
+import { continueAbove } from './standardContinuation.ts'
+import { HEIGHT, TEMPERATURE, VAPOUR, WIND_EAST, WIND_NORTH } from './tiles.ts'
+
+/** Whether air beyond a field's grid or times is refused, or the nearest air is taken. */
+export type OutsidePolicy = 'refuse' | 'hold'
+
+/** What a flight took from a field beyond what the field holds. */
+export interface FieldUse {
+  /** The nearest place on the grid's edge was taken */
+  heldPlace: boolean
+  /** The first or last time was taken */
+  heldTime: boolean
+  /** Geometric altitudes, m, sampled above the highest and below the lowest level */
+  aboveLevels: AltitudeSpan | null
+  belowLevels: AltitudeSpan | null
+}
+
+/** One level of the air over a place. SI. */
+export interface FieldLevel {
+  pressure: number
+  geopotentialHeight: number
+  temperature: number
+  /** Over liquid water; undefined above the highest level with humidity */
+  vapourPressure?: number
+  /** 0 to 1, over liquid water */
+  relativeHumidity?: number
+  windEast: number
+  windNorth: number
+}
+
+/**
+ * A gridded forecast as air to fly in. Linear in time and, in the grid's own index space, horizontally;
+ * between levels temperature, wind and vapour pressure are linear in geopotential height and so is ln p;
+ * beyond them as beyond a sounding's (ProfileAir).
+ */
+export class FieldAir implements Air {
+  readonly file: FieldFile
+  private readonly tiles: FieldTiles
+  private readonly logPressures: Float64Array
+  /** Index of the highest level with humidity, −1 without any. */
+  private readonly humidTop: number
+  private readonly lastInterval: number
+  /** The interval found last: neighbouring calls ask for neighbouring heights. */
+  private interval = 0
+  private lowestAbove = Infinity
+  private highestAbove = -Infinity
+  private lowestBelow = Infinity
+  private highestBelow = -Infinity
+
+  constructor(file: FieldFile, outside: OutsidePolicy) {
+    this.file = file
+    this.tiles = new FieldTiles(file, outside)
+    const { levels, humidity } = file.header
+    this.logPressures = Float64Array.from(levels, Math.log)
+    this.humidTop = humidity ? levels.indexOf(humidity.levels[humidity.levels.length - 1]) : -1
+    this.lastInterval = levels.length - 2
+  }
+
+  /** @throws OutsideField beyond the grid or the times, where such air is refused or no value is near. */
+  sample(latitude: number, longitude: number, altitude: number, time: number, out: AirState): void {
+    const { tiles } = this
+    tiles.locate(latitude, longitude, time)
+    const height = geopotentialHeight(altitude)
+    let lower = this.interval
+    let bottom = tiles.value(lower, HEIGHT)
+    let top = tiles.value(lower + 1, HEIGHT)
+    while (height < bottom && lower > 0) {
+      lower--
+      top = bottom
+      bottom = tiles.value(lower, HEIGHT)
+    }
+    while (height >= top && lower < this.lastInterval) {
+      lower++
+      bottom = top
+      top = tiles.value(lower + 1, HEIGHT)
+    }
+    this.interval = lower
+    const share = (height - bottom) / (top - bottom)
+    if (share > 1) this.sampleAbove(lower + 1, top, height, altitude, out)
+    else if (share < 0) this.sampleBelow(bottom, height, altitude, out)
+    else {
+      const { logPressures } = this
+      out.temperature = tiles.mix(lower, TEMPERATURE, share)
+      out.windEast = tiles.mix(lower, WIND_EAST, share)
+      out.windNorth = tiles.mix(lower, WIND_NORTH, share)
+      const low = logPressures[lower]
+      out.pressure = Math.exp(low + (logPressures[lower + 1] - low) * share)
+      const vapour = lower < this.humidTop ? tiles.mix(lower, VAPOUR, share) : 0
+      out.density = airDensity(out.temperature, out.pressure, vapour)
+    }
+    out.viscosity = viscosity(out.temperature)
+    if (!(out.density > 0)) tiles.refuse('values', latitude, longitude, time)
+  }
+
+  /** The levels over a place, from the ground up. Radians, s since 1970 UTC. Throws as `sample`. */
+  column(latitude: number, longitude: number, time: number): FieldLevel[] {
+    const { tiles } = this
+    tiles.locate(latitude, longitude, time)
+    return this.file.header.levels.map((pressure, index) => {
+      const temperature = tiles.value(index, TEMPERATURE)
+      if (Number.isNaN(temperature)) tiles.refuse('values', latitude, longitude, time)
+      const vapour = tiles.value(index, VAPOUR)
+      const humidity = {
+        vapourPressure: vapour,
+        relativeHumidity: vapour / vapourPressure(temperature),
+      }
+      return {
+        pressure,
+        geopotentialHeight: tiles.value(index, HEIGHT),
+        temperature,
+        ...(index <= this.humidTop && humidity),
+        windEast: tiles.value(index, WIND_EAST),
+        windNorth: tiles.value(index, WIND_NORTH),
+      }
+    })
+  }
+
+  /** What was taken from beyond the field since the last call. */
+  takeUse(): FieldUse {
+    const span = (bottom: number, top: number) => (top >= bottom ? { bottom, top } : null)
+    const use = {
+      ...this.tiles.takeHeld(),
+      aboveLevels: span(this.lowestAbove, this.highestAbove),
+      belowLevels: span(this.lowestBelow, this.highestBelow),
+    }
+    this.lowestAbove = this.lowestBelow = Infinity
+    this.highestAbove = this.highestBelow = -Infinity
+    return use
+  }
+
+  private sampleAbove(
+    level: number,
+    top: number,
+    height: number,
+    altitude: number,
+    out: AirState,
+  ): void {
+    const { tiles } = this
+    continueAbove(top, tiles.value(level, TEMPERATURE), this.file.header.levels[level], height, out)
+    out.density = airDensity(out.temperature, out.pressure, 0)
+    out.windEast = tiles.value(level, WIND_EAST)
+    out.windNorth = tiles.value(level, WIND_NORTH)
+    this.lowestAbove = Math.min(this.lowestAbove, geometricAltitude(top))
+    this.highestAbove = Math.max(this.highestAbove, altitude)
+  }
+
+  private sampleBelow(bottom: number, height: number, altitude: number, out: AirState): void {
+    const { tiles } = this
+    const pressure = this.file.header.levels[0]
+    const temperature = tiles.value(0, TEMPERATURE)
+    const vapour = this.humidTop >= 0 ? tiles.value(0, VAPOUR) : 0
+    const moistGasConstant =
+      (DRY_AIR_GAS_CONSTANT * virtualTemperature(temperature, pressure, vapour)) / temperature
+    out.temperature = temperature + LAPSE_BELOW * (height - bottom)
+    out.pressure =
+      pressure *
+      (temperature / out.temperature) ** (STANDARD_GRAVITY / (moistGasConstant * LAPSE_BELOW)) // US Std Atm 1976, eq. 33a
+    out.density = airDensity(out.temperature, out.pressure, (vapour / pressure) * out.pressure)
+    out.windEast = tiles.value(0, WIND_EAST)
+    out.windNorth = tiles.value(0, WIND_NORTH)
+    this.lowestBelow = Math.min(this.lowestBelow, altitude)
+    this.highestBelow = Math.max(this.highestBelow, geometricAltitude(bottom))
+  }
+}

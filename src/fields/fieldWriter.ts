@@ -1,0 +1,226 @@
+import { open, rename, rm, type FileHandle } from 'node:fs/promises'
+import { dirname } from 'node:path'
+import { chooseLevels, type FieldHeader, type StoredPlane } from './fieldHeader.ts'
+import { GribError } from './gribError.ts'
+import { gribPlanes, SkippedMessages, type Plane } from './planes.ts'
+import { DEFAULT_MESSAGE_LIMITS, type MessageLimits } from './gribMessages.ts'
+import { type Quantity } from './product.ts'
+import { cutIntoTiles } from './tiles.ts'
+
+/** First bytes of a field file; the digit is the form's version. */
+export const MAGIC = 'Driftbook field 1\n'
+
+/** At the end of a field file: where its header begins, and how long it is; two doubles. */
+export const TRAILER_BYTES = 16
+
+/** How much of a file is decoded: a short message may truly hold millions of values. */
+export interface FieldLimits extends MessageLimits {
+  /** Planes */
+  planes: number
+  /** Decoded values of all planes, bytes */
+  decodedBytes: number
+}
+
+export const DEFAULT_FIELD_LIMITS: FieldLimits = {
+  ...DEFAULT_MESSAGE_LIMITS,
+  planes: 40_000,
+  decodedBytes: 64 * 2 ** 30,
+}
+
+/**
+ * Reads a GRIB file from its bytes and stores the air in it at `path`, holding one plane at a time in
+ * memory. The file appears whole, and safe on disk, or not at all.
+ *
+ * The form: `MAGIC`; planes of little-endian 32-bit floats in SI, each cut into tiles (tiles.ts); the
+ * header as JSON; the trailer.
+ * @throws GribError where the bytes are damaged or are not air to fly in.
+ */
+export async function storeField(
+  chunks: AsyncIterable<Uint8Array>,
+  path: string,
+  limits: FieldLimits = DEFAULT_FIELD_LIMITS,
+): Promise<FieldHeader> {
+  const part = `${path}.part`
+  const file = await open(part, 'w')
+  try {
+    const skipped = new SkippedMessages()
+    const writer = new PlaneWriter(file, skipped, limits)
+    await writer.start()
+    for await (const plane of gribPlanes(chunks, skipped, limits)) await writer.add(plane)
+    const header = await writer.finish()
+    await file.sync()
+    await file.close()
+    await rename(part, path)
+    await syncDirectory(dirname(path))
+    return header
+  } catch (error) {
+    await file.close().catch(() => undefined)
+    await rm(part, { force: true })
+    throw error
+  }
+}
+
+/** Writes planes as they come and remembers where. */
+class PlaneWriter {
+  private readonly file: FileHandle
+  private readonly skipped: SkippedMessages
+  private readonly stored = new Map<string, StoredPlane>()
+  private first: Plane | null = null
+  private readonly limits: FieldLimits
+  private end = 0
+  private planes = 0
+  private decodedBytes = 0
+
+  constructor(file: FileHandle, skipped: SkippedMessages, limits: FieldLimits) {
+    this.limits = limits
+    this.file = file
+    this.skipped = skipped
+  }
+
+  async start(): Promise<void> {
+    await this.append(Buffer.from(MAGIC, 'latin1'))
+  }
+
+  /** Stores a plane of the first one's grid and model; of two for the same place and time the later run's. */
+  async add(plane: Plane): Promise<void> {
+    this.planes++
+    this.decodedBytes += plane.values.length * Float32Array.BYTES_PER_ELEMENT
+    if (this.planes > this.limits.planes || this.decodedBytes > this.limits.decodedBytes) {
+      throw new GribError(
+        'too-large',
+        `more than ${this.limits.planes} planes or ${this.limits.decodedBytes} bytes of values`,
+      )
+    }
+    const extent = range(plane.values)
+    checkPlausible(plane.quantity, extent)
+    this.first ??= plane
+    const { grid, gridSection, origin } = this.first
+    if (Buffer.compare(plane.gridSection, gridSection) !== 0) {
+      this.skipped.add(`${plane.quantity}: on another grid than the first`)
+      return
+    }
+    if (plane.origin.centre !== origin.centre || plane.origin.process !== origin.process) {
+      this.skipped.add(`${plane.quantity}: from another centre or process than the first`)
+      return
+    }
+    const key = `${plane.quantity} ${plane.pressure} ${plane.validTime}`
+    const before = this.stored.get(key)
+    if (before) {
+      this.skipped.add(`${plane.quantity}: given twice for a level and time`)
+      if (before.referenceTime >= plane.referenceTime) return
+    }
+    const tiles = cutIntoTiles(plane.values, grid)
+    const bytes = Buffer.from(tiles.buffer)
+    const position = before?.position ?? this.end
+    await writeAll(this.file, bytes, position)
+    if (!before) this.end += bytes.length
+    const { quantity, pressure, validTime, referenceTime } = plane
+    this.stored.set(key, {
+      quantity,
+      pressure,
+      validTime,
+      referenceTime,
+      position,
+      ...extent,
+    })
+  }
+
+  async finish(): Promise<FieldHeader> {
+    const choice = chooseLevels(this.stored.values())
+    if (this.first === null || choice === null) {
+      throw new GribError(
+        'incomplete',
+        'the file does not hold height, temperature and both winds on at least two pressure levels at one time',
+      )
+    }
+    for (const reason of choice.unused) this.skipped.add(reason)
+    const heights = choice.planes.geopotentialHeight?.flat() ?? []
+    const positions: Partial<Record<Quantity, number[][]>> = {}
+    for (const [quantity, planes] of Object.entries(choice.planes)) {
+      positions[quantity as Quantity] = planes.map((levels) =>
+        levels.map(({ position }) => position),
+      )
+    }
+    const header: FieldHeader = {
+      origin: this.first.origin,
+      referenceTime: heights.reduce(
+        (latest, { referenceTime }) => Math.max(latest, referenceTime),
+        -Infinity,
+      ),
+      validTimes: choice.validTimes,
+      levels: choice.levels,
+      humidity: choice.humidity,
+      heights: {
+        bottom: heights.reduce((least, plane) => Math.min(least, plane.least), Infinity),
+        top: heights.reduce((greatest, plane) => Math.max(greatest, plane.greatest), -Infinity),
+      },
+      grid: Buffer.from(this.first.gridSection).toString('base64'),
+      planes: positions,
+      skipped: this.skipped.list(),
+    }
+    if (!Number.isFinite(header.heights.top - header.heights.bottom)) {
+      throw new GribError('incomplete', 'a pressure level without any height')
+    }
+    const json = Buffer.from(JSON.stringify(header))
+    const trailer = Buffer.alloc(TRAILER_BYTES)
+    trailer.writeDoubleLE(this.end, 0)
+    trailer.writeDoubleLE(json.length, 8)
+    await this.append(json)
+    await this.append(trailer)
+    return header
+  }
+
+  private async append(bytes: Uint8Array): Promise<void> {
+    await writeAll(this.file, bytes, this.end)
+    this.end += bytes.length
+  }
+}
+
+async function writeAll(file: FileHandle, bytes: Uint8Array, position: number): Promise<void> {
+  let done = 0
+  while (done < bytes.length) {
+    const { bytesWritten } = await file.write(bytes, done, bytes.length - done, position + done)
+    done += bytesWritten
+  }
+}
+
+/** What no air on earth goes beyond, SI: values past these come of damage, and a flight in them of nothing. */
+const PLAUSIBLE: Readonly<Record<Quantity, readonly [number, number]>> = {
+  temperature: [100, 400],
+  geopotentialHeight: [-3000, 100_000],
+  relativeHumidity: [-0.5, 10],
+  specificHumidity: [-0.1, 0.2],
+  windEast: [-500, 500],
+  windNorth: [-500, 500],
+}
+
+function checkPlausible(quantity: Quantity, { least, greatest }: Extent): void {
+  const [low, high] = PLAUSIBLE[quantity]
+  if (least < low || greatest > high) {
+    throw new GribError('damaged', `${quantity} from ${least} to ${greatest} (SI)`)
+  }
+}
+
+interface Extent {
+  least: number
+  greatest: number
+}
+
+function range(values: Float64Array): Extent {
+  let least = NaN
+  let greatest = NaN
+  for (const value of values) {
+    if (!(value >= least)) least = Number.isNaN(value) ? least : value
+    if (!(value <= greatest)) greatest = Number.isNaN(value) ? greatest : value
+  }
+  return { least, greatest }
+}
+
+async function syncDirectory(path: string): Promise<void> {
+  const directory = await open(path, 'r')
+  try {
+    await directory.sync()
+  } finally {
+    await directory.close()
+  }
+}
