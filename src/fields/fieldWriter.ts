@@ -13,6 +13,9 @@ export const MAGIC = 'Driftbook field 1\n'
 /** At the end of a field file: where its header begins, and how long it is; two doubles. */
 export const TRAILER_BYTES = 16
 
+/** Small planes are written together. */
+const WRITE_BYTES = 4 * 2 ** 20
+
 /** How much of a file is decoded: a short message may truly hold millions of values. */
 export interface FieldLimits extends MessageLimits {
   /** Planes */
@@ -67,7 +70,10 @@ class PlaneWriter {
   private readonly stored = new Map<string, StoredPlane>()
   private first: Plane | null = null
   private readonly limits: FieldLimits
+  /** Written or waiting to be */
   private end = 0
+  private pending: Uint8Array[] = []
+  private pendingBytes = 0
   private planes = 0
   private decodedBytes = 0
 
@@ -109,11 +115,8 @@ class PlaneWriter {
       this.skipped.add(`${plane.quantity}: given twice for a level and time`)
       if (before.referenceTime >= plane.referenceTime) return
     }
-    const tiles = cutIntoTiles(plane.values, grid)
-    const bytes = Buffer.from(tiles.buffer)
-    const position = before?.position ?? this.end
-    await writeAll(this.file, bytes, position)
-    if (!before) this.end += bytes.length
+    const position = this.end
+    await this.append(Buffer.from(cutIntoTiles(plane.values, grid).buffer))
     const { quantity, pressure, validTime, referenceTime } = plane
     this.stored.set(key, {
       quantity,
@@ -167,20 +170,21 @@ class PlaneWriter {
     trailer.writeDoubleLE(json.length, 8)
     await this.append(json)
     await this.append(trailer)
+    await this.flush()
     return header
   }
 
   private async append(bytes: Uint8Array): Promise<void> {
-    await writeAll(this.file, bytes, this.end)
+    this.pending.push(bytes)
+    this.pendingBytes += bytes.length
     this.end += bytes.length
+    if (this.pendingBytes >= WRITE_BYTES) await this.flush()
   }
-}
 
-async function writeAll(file: FileHandle, bytes: Uint8Array, position: number): Promise<void> {
-  let done = 0
-  while (done < bytes.length) {
-    const { bytesWritten } = await file.write(bytes, done, bytes.length - done, position + done)
-    done += bytesWritten
+  private async flush(): Promise<void> {
+    await this.file.writeFile(Buffer.concat(this.pending)) // goes on where the last write ended
+    this.pending = []
+    this.pendingBytes = 0
   }
 }
 
