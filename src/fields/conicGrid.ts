@@ -78,7 +78,7 @@ export class ConformalCone {
 }
 
 /** Snyder's n of the cone through two parallels of true scale, radians, eq. 15-8. */
-function coneThrough(first: number, second: number, earth: EarthShape): number {
+export function coneThrough(first: number, second: number, earth: EarthShape): number {
   if (Math.abs(first - second) < 1e-9) return Math.sin(first)
   const e = earth.eccentricity
   const logIsometric = (latitude: number) => {

@@ -13,7 +13,7 @@ import { type FieldFile } from './fieldFile.ts'
 import { FieldTiles } from './fieldTiles.ts'
 import { LAPSE_BELOW } from './missingLevels.ts'
 import { continueAbove } from './standardContinuation.ts'
-import { HEIGHT, TEMPERATURE, VAPOUR, WIND_EAST, WIND_NORTH } from './tiles.ts'
+import { HEIGHT, LEVEL_VALUES, TEMPERATURE, VAPOUR, WIND_EAST, WIND_NORTH } from './tiles.ts'
 
 /** Whether air beyond a field's grid or times is refused, or the nearest air is taken. */
 export type OutsidePolicy = 'refuse' | 'hold'
@@ -54,8 +54,13 @@ export class FieldAir implements Air {
   /** Index of the highest level with humidity, −1 without any. */
   private readonly humidTop: number
   private readonly lastInterval: number
+  private readonly bottomPressure: number
+  private readonly topPressure: number
   /** The interval found last: neighbouring calls ask for neighbouring heights. */
   private interval = 0
+  /** The levels under and over the last sample, to be filled again. */
+  private lowerLevel = new Float64Array(LEVEL_VALUES)
+  private upperLevel = new Float64Array(LEVEL_VALUES)
   private lowestAbove = Infinity
   private highestAbove = -Infinity
   private lowestBelow = Infinity
@@ -68,6 +73,8 @@ export class FieldAir implements Air {
     this.logPressures = Float64Array.from(levels, Math.log)
     this.humidTop = humidity ? levels.indexOf(humidity.levels[humidity.levels.length - 1]) : -1
     this.lastInterval = levels.length - 2
+    this.bottomPressure = levels[0]
+    this.topPressure = levels[levels.length - 1]
   }
 
   /** @throws OutsideField beyond the grid or the times, where such air is refused or no value is near. */
@@ -76,30 +83,39 @@ export class FieldAir implements Air {
     tiles.locate(latitude, longitude, time)
     const height = geopotentialHeight(altitude)
     let lower = this.interval
-    let bottom = tiles.value(lower, HEIGHT)
-    let top = tiles.value(lower + 1, HEIGHT)
-    while (height < bottom && lower > 0) {
+    let below = this.lowerLevel
+    let above = this.upperLevel
+    tiles.level(lower, below)
+    tiles.level(lower + 1, above)
+    while (height < below[HEIGHT] && lower > 0) {
       lower--
-      top = bottom
-      bottom = tiles.value(lower, HEIGHT)
+      const spare = above
+      above = below
+      below = spare
+      tiles.level(lower, below)
     }
-    while (height >= top && lower < this.lastInterval) {
+    while (height >= above[HEIGHT] && lower < this.lastInterval) {
       lower++
-      bottom = top
-      top = tiles.value(lower + 1, HEIGHT)
+      const spare = below
+      below = above
+      above = spare
+      tiles.level(lower + 1, above)
     }
     this.interval = lower
-    const share = (height - bottom) / (top - bottom)
-    if (share > 1) this.sampleAbove(lower + 1, top, height, altitude, out)
-    else if (share < 0) this.sampleBelow(bottom, height, altitude, out)
+    this.lowerLevel = below
+    this.upperLevel = above
+
+    const share = (height - below[HEIGHT]) / (above[HEIGHT] - below[HEIGHT])
+    if (share > 1) this.sampleAbove(above, height, altitude, out)
+    else if (share < 0) this.sampleBelow(below, height, altitude, out)
     else {
       const { logPressures } = this
-      out.temperature = tiles.mix(lower, TEMPERATURE, share)
-      out.windEast = tiles.mix(lower, WIND_EAST, share)
-      out.windNorth = tiles.mix(lower, WIND_NORTH, share)
+      out.temperature = mix(below, above, TEMPERATURE, share)
+      out.windEast = mix(below, above, WIND_EAST, share)
+      out.windNorth = mix(below, above, WIND_NORTH, share)
       const low = logPressures[lower]
       out.pressure = Math.exp(low + (logPressures[lower + 1] - low) * share)
-      const vapour = lower < this.humidTop ? tiles.mix(lower, VAPOUR, share) : 0
+      const vapour = lower < this.humidTop ? mix(below, above, VAPOUR, share) : 0
       out.density = airDensity(out.temperature, out.pressure, vapour)
     }
     out.viscosity = viscosity(out.temperature)
@@ -110,21 +126,22 @@ export class FieldAir implements Air {
   column(latitude: number, longitude: number, time: number): FieldLevel[] {
     const { tiles } = this
     tiles.locate(latitude, longitude, time)
+    const values = this.lowerLevel
     return this.file.header.levels.map((pressure, index) => {
-      const temperature = tiles.value(index, TEMPERATURE)
+      tiles.level(index, values)
+      const temperature = values[TEMPERATURE]
       if (Number.isNaN(temperature)) tiles.refuse('values', latitude, longitude, time)
-      const vapour = tiles.value(index, VAPOUR)
       const humidity = {
-        vapourPressure: vapour,
-        relativeHumidity: vapour / vapourPressure(temperature),
+        vapourPressure: values[VAPOUR],
+        relativeHumidity: values[VAPOUR] / vapourPressure(temperature),
       }
       return {
         pressure,
-        geopotentialHeight: tiles.value(index, HEIGHT),
+        geopotentialHeight: values[HEIGHT],
         temperature,
         ...(index <= this.humidTop && humidity),
-        windEast: tiles.value(index, WIND_EAST),
-        windNorth: tiles.value(index, WIND_NORTH),
+        windEast: values[WIND_EAST],
+        windNorth: values[WIND_NORTH],
       }
     })
   }
@@ -142,37 +159,33 @@ export class FieldAir implements Air {
     return use
   }
 
-  private sampleAbove(
-    level: number,
-    top: number,
-    height: number,
-    altitude: number,
-    out: AirState,
-  ): void {
-    const { tiles } = this
-    continueAbove(top, tiles.value(level, TEMPERATURE), this.file.header.levels[level], height, out)
+  private sampleAbove(top: Float64Array, height: number, altitude: number, out: AirState): void {
+    continueAbove(top[HEIGHT], top[TEMPERATURE], this.topPressure, height, out)
     out.density = airDensity(out.temperature, out.pressure, 0)
-    out.windEast = tiles.value(level, WIND_EAST)
-    out.windNorth = tiles.value(level, WIND_NORTH)
-    this.lowestAbove = Math.min(this.lowestAbove, geometricAltitude(top))
+    out.windEast = top[WIND_EAST]
+    out.windNorth = top[WIND_NORTH]
+    this.lowestAbove = Math.min(this.lowestAbove, geometricAltitude(top[HEIGHT]))
     this.highestAbove = Math.max(this.highestAbove, altitude)
   }
 
-  private sampleBelow(bottom: number, height: number, altitude: number, out: AirState): void {
-    const { tiles } = this
-    const pressure = this.file.header.levels[0]
-    const temperature = tiles.value(0, TEMPERATURE)
-    const vapour = this.humidTop >= 0 ? tiles.value(0, VAPOUR) : 0
+  private sampleBelow(bottom: Float64Array, height: number, altitude: number, out: AirState): void {
+    const pressure = this.bottomPressure
+    const temperature = bottom[TEMPERATURE]
+    const vapour = bottom[VAPOUR]
     const moistGasConstant =
       (DRY_AIR_GAS_CONSTANT * virtualTemperature(temperature, pressure, vapour)) / temperature
-    out.temperature = temperature + LAPSE_BELOW * (height - bottom)
+    out.temperature = temperature + LAPSE_BELOW * (height - bottom[HEIGHT])
     out.pressure =
       pressure *
       (temperature / out.temperature) ** (STANDARD_GRAVITY / (moistGasConstant * LAPSE_BELOW)) // US Std Atm 1976, eq. 33a
     out.density = airDensity(out.temperature, out.pressure, (vapour / pressure) * out.pressure)
-    out.windEast = tiles.value(0, WIND_EAST)
-    out.windNorth = tiles.value(0, WIND_NORTH)
+    out.windEast = bottom[WIND_EAST]
+    out.windNorth = bottom[WIND_NORTH]
     this.lowestBelow = Math.min(this.lowestBelow, altitude)
-    this.highestBelow = Math.max(this.highestBelow, geometricAltitude(bottom))
+    this.highestBelow = Math.max(this.highestBelow, geometricAltitude(bottom[HEIGHT]))
   }
+}
+
+function mix(below: Float64Array, above: Float64Array, slot: number, share: number): number {
+  return below[slot] + (above[slot] - below[slot]) * share
 }

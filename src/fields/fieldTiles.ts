@@ -96,27 +96,24 @@ export class FieldTiles {
     this.e11 = w11 - this.l11
   }
 
-  /** A value of a level at the located place. */
-  value(level: number, slot: number): number {
-    const { early, late, stride, rowStride } = this
-    const at = this.cell + level * LEVEL_VALUES + slot
-    const north = at + rowStride
-    return (
-      this.e00 * early[at] +
-      this.e01 * early[at + stride] +
-      this.e10 * early[north] +
-      this.e11 * early[north + stride] +
-      this.l00 * late[at] +
-      this.l01 * late[at + stride] +
-      this.l10 * late[north] +
-      this.l11 * late[north + stride]
-    )
-  }
-
-  /** A value at a share of the way from a level to the next. */
-  mix(level: number, slot: number, share: number): number {
-    const lower = this.value(level, slot)
-    return lower + (this.value(level + 1, slot) - lower) * share
+  /** Fills `out` with the `LEVEL_VALUES` values of a level at the located place. */
+  level(level: number, out: Float64Array): void {
+    const { early, late, e00, e01, e10, e11, l00, l01, l10, l11 } = this
+    const first = this.cell + level * LEVEL_VALUES
+    const nextColumn = first + this.stride
+    const nextRow = first + this.rowStride
+    const opposite = nextRow + this.stride
+    for (let slot = 0; slot < LEVEL_VALUES; slot++) {
+      out[slot] =
+        e00 * early[first + slot] +
+        e01 * early[nextColumn + slot] +
+        e10 * early[nextRow + slot] +
+        e11 * early[opposite + slot] +
+        l00 * late[first + slot] +
+        l01 * late[nextColumn + slot] +
+        l10 * late[nextRow + slot] +
+        l11 * late[opposite + slot]
+    }
   }
 
   /** Whether the nearest place or time was taken for one outside since the last call. */
