@@ -46,6 +46,10 @@ export default tseslint.config(
       // Typed arrays and parsed rows are read by index all over the physics; bounds are the loop's.
       '@typescript-eslint/no-non-null-assertion': 'error',
       '@typescript-eslint/consistent-type-imports': ['error', { fixStyle: 'inline-type-imports' }],
+      '@typescript-eslint/no-unused-vars': [
+        'error',
+        { argsIgnorePattern: '^_', varsIgnorePattern: '^_' },
+      ],
       'no-restricted-syntax': [
         'error',
         { selector: 'ExportDefaultDeclaration', message: 'Named exports only.' },
@@ -55,6 +59,7 @@ export default tseslint.config(
   {
     files: ['.config/**'],
     ...tseslint.configs.disableTypeChecked,
+    languageOptions: { globals: { URL: 'readonly' } },
     rules: { ...tseslint.configs.disableTypeChecked.rules, 'no-restricted-syntax': 'off' },
   },
   { files: ['**/*.js'], ...tseslint.configs.disableTypeChecked },

@@ -3,18 +3,16 @@ import { type Column } from './column.ts'
 import { CEILING, MOLAR_GAS_CONSTANT } from './constants.ts'
 import { type DragCurve } from './dragCurves.ts'
 import { drift, gravity } from './earth.ts'
+import { type Fill } from './fill.ts'
 import { sphereDiameter } from './gas.ts'
 import { NotFlyable } from './notFlyable.ts'
 import { recordedStep, type PathRecorder, type Whereabouts } from './path.ts'
 
 /** A balloon on its way up, SI. */
 export interface AscendingBalloon {
-  /** Moles of gas */
-  moles: number
+  fill: Fill
   /** Balloon, payload and gas, kg */
   mass: number
-  /** The gas alone, kg */
-  gasMass: number
   /** Gas warmer than the air by, K */
   temperatureOffset: number
   /** Volume at which the envelope bursts, m³ */
@@ -39,7 +37,7 @@ export function gasVolume(
   pressure: number,
 ): number {
   return (
-    (balloon.moles * MOLAR_GAS_CONSTANT * (temperature + balloon.temperatureOffset)) / pressure // ideal gas law
+    (balloon.fill.moles * MOLAR_GAS_CONSTANT * (temperature + balloon.temperatureOffset)) / pressure // ideal gas law
   )
 }
 
@@ -196,11 +194,15 @@ function stopsRising(balloon: AscendingBalloon, column: Column, altitude: number
       column.edgePressure[edge]
     leastDisplaced = Math.min(leastDisplaced, volumePerMole * column.edgeDensity[edge])
   }
-  const liftPerMole = leastDisplaced - balloon.gasMass / balloon.moles
-  const neededMoles = (balloon.mass - balloon.gasMass) / liftPerMole
+  const { moles, gasMass, grossLift, neckLift } = balloon.fill
+  const liftPerMole = leastDisplaced - gasMass / moles
+  const neededMoles = (balloon.mass - gasMass) / liftPerMole
   return new NotFlyable({
     kind: 'stops-rising',
     altitude,
-    neededFillRatio: liftPerMole > 0 ? neededMoles / balloon.moles : null,
+    neckLift,
+    // Gross lift goes with the gas; the balloon's own mass comes off it.
+    neededNeckLift:
+      liftPerMole > 0 ? (grossLift * neededMoles) / moles - (grossLift - neckLift) : null,
   })
 }

@@ -6,7 +6,7 @@ import { gravity } from './earth.ts'
 const COLUMN_BASE = -1000
 
 /** Thickness of a slab, m. Halving it moves a landing by metres (tests/physics/flight.test.ts). */
-const SLAB_THICKNESS = 200
+const SLAB_THICKNESS = 400
 
 /** Nodes of the two-point Gauss-Legendre rule on [0, 1]. Abramowitz and Stegun, table 25.4. */
 const GAUSS = [0.5 - Math.sqrt(1 / 12), 0.5 + Math.sqrt(1 / 12)] as const

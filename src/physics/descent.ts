@@ -18,9 +18,10 @@ export interface DescentEnd {
 }
 
 /** Steps in which the free fall after burst is taken. */
-const OPENING_STEPS = 16
+const OPENING_STEPS = 10
 
 const slabAir = emptyAirState()
+const thirdAir = emptyAirState()
 const pointAir = emptyAirState()
 
 /**
@@ -103,19 +104,23 @@ class Fall {
     const end = Math.sqrt(apex - to)
     const third = start + (end - start) / 3
     const thirdAltitude = apex - third * third
-    air.sampleAltitude(thirdAltitude, pointAir)
-    const thirdDensity = pointAir.density
+    air.sampleAltitude(thirdAltitude, thirdAir)
     air.sampleAltitude(to, pointAir)
     const duration = this.radau(
       end - start,
       2 * third, // ds = 2σ·dσ
       gravity(thirdAltitude),
-      thirdDensity,
+      thirdAir.density,
       2 * end,
       gravity(to),
       pointAir.density,
     )
-    this.move(to, duration)
+    this.move(
+      to,
+      duration,
+      0.75 * thirdAir.windEast + 0.25 * pointAir.windEast,
+      0.75 * thirdAir.windNorth + 0.25 * pointAir.windNorth,
+    )
   }
 
   /** A step in altitude down to `to`, m, within one slab. */
@@ -135,13 +140,20 @@ class Fall {
       )
     } else {
       const third = from - (from - to) / 3
-      column.air.sampleAltitude(third, pointAir)
-      const thirdDensity = pointAir.density
+      column.air.sampleAltitude(third, thirdAir)
       column.air.sampleAltitude(to, pointAir)
-      const endDensity = pointAir.density
-      duration = this.radau(from - to, 1, gravity(third), thirdDensity, 1, gravity(to), endDensity)
+      duration = this.radau(
+        from - to,
+        1,
+        gravity(third),
+        thirdAir.density,
+        1,
+        gravity(to),
+        pointAir.density,
+      )
     }
-    this.move(to, duration)
+    column.mean(to, from, slabAir)
+    this.move(to, duration, slabAir.windEast, slabAir.windNorth)
   }
 
   /**
@@ -179,10 +191,9 @@ class Fall {
     return h * ((0.75 * firstScale) / Math.sqrt(first) + (0.25 * lastScale) / Math.sqrt(last))
   }
 
-  private move(to: number, duration: number): void {
-    const { at, column } = this
-    column.mean(to, at.altitude, slabAir)
-    drift(at, (at.altitude + to) / 2, slabAir.windEast * duration, slabAir.windNorth * duration)
+  private move(to: number, duration: number, windEast: number, windNorth: number): void {
+    const { at } = this
+    drift(at, (at.altitude + to) / 2, windEast * duration, windNorth * duration)
     at.altitude = to
     at.elapsed += duration
   }

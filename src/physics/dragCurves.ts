@@ -55,10 +55,23 @@ class SoundingBalloonDrag implements DragCurve {
   readonly fitted = { from: 4e4, to: 1.5e6 }
   private readonly low = Math.log(this.fitted.from)
   private readonly high = Math.log(this.fitted.to)
-  private readonly lowCoefficient = quadratic(this.low)
-  private readonly highCoefficient = quadratic(this.high)
-  private readonly lowBest = 2 * this.low + Math.log(this.lowCoefficient)
-  private readonly highBest = 2 * this.high + Math.log(this.highCoefficient)
+  private readonly lowBest = logBest(this.low)
+  private readonly highBest = logBest(this.high)
+  /** ln Re and its slope at equal steps of ln(Cd·Re²) between the two ends. */
+  private readonly step = (this.highBest - this.lowBest) / INVERSE_STEPS
+  private readonly inverse = new Float64Array(INVERSE_STEPS + 1)
+  private readonly inverseSlope = new Float64Array(INVERSE_STEPS + 1)
+
+  constructor() {
+    let x = this.low
+    for (let node = 0; node <= INVERSE_STEPS; node++) {
+      const target = this.lowBest + node * this.step
+      // Newton: ln(Cd·Re²) rises by 1.5 to 2 per unit of ln Re over the whole range.
+      for (let round = 0; round < 20; round++) x -= (logBest(x) - target) / logBestSlope(x)
+      this.inverse[node] = x
+      this.inverseSlope[node] = 1 / logBestSlope(x)
+    }
+  }
 
   coefficient(reynolds: number): number {
     return quadratic(Math.min(this.high, Math.max(this.low, Math.log(reynolds))))
@@ -66,27 +79,36 @@ class SoundingBalloonDrag implements DragCurve {
 
   reynolds(best: number): number {
     const target = Math.log(best)
-    if (target <= this.lowBest) return Math.sqrt(best / this.lowCoefficient)
-    if (target >= this.highBest) return Math.sqrt(best / this.highCoefficient)
-    // Newton on 2x + ln Cd(x) = target, which rises at 1.5 to 2 per unit of x over the whole range.
-    let x =
-      this.low + ((this.high - this.low) * (target - this.lowBest)) / (this.highBest - this.lowBest)
-    for (let round = 0; round < 8; round++) {
-      const drag = quadratic(x)
-      const step =
-        (2 * x + Math.log(drag) - target) / (2 + (2 * QUADRATIC[2] * x + QUADRATIC[1]) / drag)
-      x -= step
-      if (Math.abs(step) < 1e-6) break // the next step would be the square of this one
-    }
+    if (target <= this.lowBest) return Math.sqrt(best / quadratic(this.low))
+    if (target >= this.highBest) return Math.sqrt(best / quadratic(this.high))
+    const place = (target - this.lowBest) / this.step
+    const node = Math.min(INVERSE_STEPS - 1, Math.floor(place))
+    const s = place - node
+    const r = 1 - s
+    // Cubic Hermite interpolation: within 1e-9 of ln Re (tests/physics/dragCurves.test.ts).
+    const x =
+      r * r * ((1 + 2 * s) * this.inverse[node] + s * this.step * this.inverseSlope[node]) +
+      s * s * ((1 + 2 * r) * this.inverse[node + 1] - r * this.step * this.inverseSlope[node + 1])
     return Math.exp(x)
   }
 }
+
+/** Cells of the table that takes ln(Cd·Re²) back to ln Re. */
+const INVERSE_STEPS = 128
 
 /** Constant, linear and square coefficient of Cd in ln Re (from memory, see SoundingBalloonDrag). */
 const QUADRATIC = [10.49, -1.406, 0.04808] as const
 
 function quadratic(x: number): number {
   return QUADRATIC[0] + x * (QUADRATIC[1] + x * QUADRATIC[2])
+}
+
+function logBest(x: number): number {
+  return 2 * x + Math.log(quadratic(x))
+}
+
+function logBestSlope(x: number): number {
+  return 2 + (QUADRATIC[1] + 2 * x * QUADRATIC[2]) / quadratic(x)
 }
 
 /**

@@ -36,8 +36,7 @@ export function gravity(altitude: number): number {
  */
 export function drift(position: Position, altitude: number, east: number, north: number): void {
   const start = position.latitude
-  const first = north / (meridionalRadius(Math.sin(start)) + altitude)
-  const sine = Math.sin(start + first / 2)
+  const sine = Math.sin(start + north / (2 * (SEMI_MAJOR_AXIS + altitude)))
   const cosine = Math.max(Math.sqrt(1 - sine * sine), 1e-9) // the pole itself has no east
   const squash = 1 - ECCENTRICITY_SQUARED * sine * sine
   const primeVertical = SEMI_MAJOR_AXIS / Math.sqrt(squash)
@@ -55,9 +54,4 @@ export function wrapLongitude(longitude: number): number {
   if (longitude >= -Math.PI && longitude < Math.PI) return longitude
   const turned = (longitude + Math.PI) % (2 * Math.PI)
   return (turned < 0 ? turned + 2 * Math.PI : turned) - Math.PI
-}
-
-function meridionalRadius(sine: number): number {
-  const squash = 1 - ECCENTRICITY_SQUARED * sine * sine
-  return (SEMI_MAJOR_AXIS * (1 - ECCENTRICITY_SQUARED)) / (squash * Math.sqrt(squash))
 }

@@ -69,9 +69,8 @@ export function fly(plan: FlightPlan, column: Column, recorder?: PathRecorder): 
   column.air.sampleAltitude(launch.altitude, air)
   const filled = fill(neckLift, balloon.mass, payloadMass, gas, air)
   const ascending: AscendingBalloon = {
-    moles: filled.moles,
+    fill: filled,
     mass: balloon.mass + payloadMass + filled.gasMass,
-    gasMass: filled.gasMass,
     temperatureOffset: gas.temperatureOffset,
     burstVolume: sphereVolume(balloon.ratedBurstDiameter),
     drag: dragCurve(plan.drag),

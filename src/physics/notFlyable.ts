@@ -11,9 +11,11 @@ export type NotFlyableReason =
     }
   | {
       kind: 'stops-rising'
+      neckLift: number
+      /** Where it floats, m */
       altitude: number
-      /** The least fill that keeps the balloon rising over this fill; null where no fill would. */
-      neededFillRatio: number | null
+      /** The least neck lift, kg, that keeps it rising to the ceiling; null where none would */
+      neededNeckLift: number | null
     }
   | { kind: 'falls-past-landing'; landingAltitude: number; burstAltitude: number }
 

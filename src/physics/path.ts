@@ -17,7 +17,7 @@ export interface PathRecorder {
 }
 
 /** How far, m, a recorded path may bend away from the straight line between two recorded steps. */
-const RECORDED_BEND = 15
+const RECORDED_BEND = 20
 
 /**
  * Height, m, that a recorded flight may step through at a vertical `speed` in m/s where the wind ranges

@@ -1,0 +1,89 @@
+import accepts from '@fastify/accepts'
+import helmet from '@fastify/helmet'
+import swagger from '@fastify/swagger'
+import swaggerUi from '@fastify/swagger-ui'
+import fastify, { type FastifyBaseLogger, type FastifyInstance } from 'fastify'
+import { type z } from 'zod'
+import { type Store } from '../store/store.ts'
+import { Airs } from './airs.ts'
+import { acceptJson } from './bodies.ts'
+import { type App, type Context } from './context.ts'
+import { describeRoute, describeSchemas, openApiInfo } from './openApi.ts'
+import { answerError, faultyRequest, Problem, sendProblem } from './problems.ts'
+import { flightRoutes } from './routes/flights.ts'
+import { healthRoutes } from './routes/health.ts'
+import { outcomeRoutes } from './routes/outcomes.ts'
+import { profileRoutes } from './routes/profiles.ts'
+import { rerunRoutes } from './routes/reruns.ts'
+import { runRoutes } from './routes/runs.ts'
+import { trialRoutes } from './routes/trials.ts'
+import { schemaFaults } from './schemaFaults.ts'
+
+/** What pages may load: nothing from elsewhere. Plain HTTP is served, so nothing forces TLS. */
+const securityHeaders = {
+  strictTransportSecurity: false,
+  contentSecurityPolicy: {
+    useDefaults: false,
+    directives: {
+      defaultSrc: ["'self'"],
+      baseUri: ["'self'"],
+      formAction: ["'self'"],
+      frameAncestors: ["'self'"],
+      objectSrc: ["'none'"],
+      imgSrc: ["'self'", 'data:', 'blob:'],
+      styleSrc: ["'self'", "'unsafe-inline'"],
+      workerSrc: ["'self'", 'blob:'],
+    },
+  },
+}
+
+/** Builds the service on a store; it is not listening yet. */
+export async function buildApp(
+  store: Store,
+  logger: FastifyBaseLogger | false,
+): Promise<FastifyInstance> {
+  const app = fastify({
+    ...(logger ? { loggerInstance: logger } : {}),
+    routerOptions: { maxParamLength: 200 },
+    frameworkErrors: (error, request, reply) => void answerError(error, request, reply),
+  })
+
+  app.setValidatorCompiler(({ schema, httpPart }) => (data: unknown) => {
+    if (Buffer.isBuffer(data)) return { value: data } // an upload: its reader checks it
+    const result = (schema as unknown as z.ZodType).safeParse(data, { reportInput: true })
+    if (result.success) return { value: result.data }
+    return { error: faultyRequest(400, schemaFaults(result.error, httpPart)) }
+  })
+  app.setSerializerCompiler(() => JSON.stringify)
+  app.setErrorHandler(answerError)
+  app.setNotFoundHandler((request, reply) =>
+    sendProblem(reply, new Problem(404, `There is nothing at ${request.method} ${request.url}.`)),
+  )
+  app.removeAllContentTypeParsers()
+  acceptJson(app)
+
+  // Plugins from elsewhere
+  await app.register(helmet, securityHeaders)
+  await app.register(accepts)
+  await app.register(swagger, {
+    openapi: openApiInfo,
+    transform: describeRoute,
+    transformObject: describeSchemas,
+  })
+  await app.register(swaggerUi, { routePrefix: '/docs' })
+
+  // The routes
+  const context: Context = { store, airs: new Airs(store.profiles) }
+  const typed = app as unknown as App
+  flightRoutes(typed, context)
+  runRoutes(typed, context)
+  rerunRoutes(typed, context)
+  trialRoutes(typed, context)
+  outcomeRoutes(typed, context)
+  await app.register((scope) => {
+    profileRoutes(scope, context)
+    return Promise.resolve()
+  })
+  healthRoutes(typed, context)
+  return app
+}

@@ -1,0 +1,32 @@
+import {
+  type FastifyBaseLogger,
+  type FastifyInstance,
+  type FastifyTypeProvider,
+  type RawReplyDefaultExpression,
+  type RawRequestDefaultExpression,
+  type RawServerDefault,
+} from 'fastify'
+import { type z } from 'zod'
+import { type Store } from '../store/store.ts'
+import { type Airs } from './airs.ts'
+
+/** What the routes work with. */
+export interface Context {
+  store: Store
+  airs: Airs
+}
+
+/** Requests have the types of their schemas; answers are checked against theirs by the tests. */
+interface SchemaTypes extends FastifyTypeProvider {
+  validator: this['schema'] extends z.ZodType ? z.output<this['schema']> : unknown
+  serializer: unknown
+}
+
+/** The application, its requests typed by their zod schemas. */
+export type App = FastifyInstance<
+  RawServerDefault,
+  RawRequestDefaultExpression,
+  RawReplyDefaultExpression,
+  FastifyBaseLogger,
+  SchemaTypes
+>

@@ -1,0 +1,74 @@
+import { createHash } from 'node:crypto'
+import { type FastifyReply, type FastifyRequest } from 'fastify'
+import { type Store } from '../store/store.ts'
+import { Problem } from './problems.ts'
+
+/** What a creating request will have made: its answer, and how it is stored. */
+export interface Creation {
+  /** Path of the new thing; null where there are many */
+  location: string | null
+  answer: unknown
+  /** Writes everything; called inside one transaction */
+  store: () => void
+}
+
+/**
+ * Answers a creating request: what `create` makes is stored as one transaction before the answer leaves.
+ * With an Idempotency-Key the first answer is kept and given again; the same key with another request is
+ * refused with 409.
+ */
+export async function answerCreation(
+  request: FastifyRequest,
+  reply: FastifyReply,
+  store: Store,
+  create: () => Creation | Promise<Creation>,
+): Promise<FastifyReply> {
+  const key = request.headers['idempotency-key']
+  if (typeof key !== 'string') {
+    const creation = await create()
+    store.atomically(creation.store)
+    return send(reply, creation.location, JSON.stringify(creation.answer))
+  }
+
+  const digest = digestOf(request)
+  const known = firstAnswer(store, key, digest)
+  if (known) return send(reply, known.location, known.answer)
+  const { location, answer, store: write } = await create()
+  const text = JSON.stringify(answer)
+  // The same request may have been answered while this one was being worked out.
+  const overtaken = store.atomically(() => {
+    const other = firstAnswer(store, key, digest)
+    if (other) return other
+    write()
+    store.firstAnswers.insert({
+      key,
+      digest,
+      location,
+      answer: text,
+      createdAt: new Date().toISOString(),
+    })
+    return undefined
+  })
+  return overtaken ? send(reply, overtaken.location, overtaken.answer) : send(reply, location, text)
+}
+
+function firstAnswer(store: Store, key: string, digest: Buffer) {
+  const known = store.firstAnswers.get(key)
+  if (known && !known.digest.equals(digest)) {
+    throw new Problem(409, 'This Idempotency-Key was used for another request: take a new key.')
+  }
+  return known
+}
+
+function digestOf(request: FastifyRequest): Buffer {
+  const { body } = request
+  return createHash('sha256')
+    .update(`${request.method} ${request.url}\n`)
+    .update(Buffer.isBuffer(body) ? body : JSON.stringify(body))
+    .digest()
+}
+
+function send(reply: FastifyReply, location: string | null, answer: string): FastifyReply {
+  if (location !== null) reply.header('location', location)
+  return reply.status(201).type('application/json; charset=utf-8').send(answer)
+}

@@ -1,0 +1,53 @@
+import { v7 as uuid } from 'uuid'
+import { packTrack } from '../exchange/trackRow.ts'
+import { predict } from '../planning/prediction.ts'
+import { type RunRow } from '../store/runs.ts'
+import { profileIdOf, type Airs } from './airs.ts'
+import { toFlightPlan } from './flightPlan.ts'
+import { shiftBetween, trialAnswer } from './runAnswer.ts'
+import { type Plan } from './schemas/plan.ts'
+import { type Run, type Trial } from './schemas/run.ts'
+
+/** A flown plan that is to be stored: the answer and its row. */
+export interface FlownRun {
+  run: Run
+  row: RunRow
+}
+
+/**
+ * Flies a plan without storing anything.
+ * @throws NotFlyable, or Problem where its air is not there
+ */
+export function flyTrial(plan: Plan, airs: Airs): Trial {
+  const source = airs.source(plan.air)
+  return trialAnswer(predict(toFlightPlan(plan), source), plan, source, now())
+}
+
+/**
+ * Flies a plan for storing, compared with the flight's run before where there is one.
+ * @throws NotFlyable, or Problem where its air is not there
+ */
+export function flyRun(flightId: string, plan: Plan, before: Run | null, airs: Airs): FlownRun {
+  const source = airs.source(plan.air)
+  const prediction = predict(toFlightPlan(plan), source)
+  const trial = trialAnswer(prediction, plan, source, now())
+  const run: Run = {
+    ...trial,
+    id: uuid(),
+    flightId,
+    shift: before && shiftBetween(trial, before),
+  }
+  const row: RunRow = {
+    id: run.id,
+    flightId,
+    profileId: profileIdOf(plan.air),
+    answer: JSON.stringify(run),
+    track: packTrack(prediction.track),
+  }
+  return { run, row }
+}
+
+/** The present moment as ISO 8601. */
+export function now(): string {
+  return new Date().toISOString()
+}
