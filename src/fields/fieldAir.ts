@@ -3,9 +3,9 @@ import {
   virtualTemperature,
   viscosity,
   vapourPressure,
-  type Air,
   type AirState,
   type AltitudeSpan,
+  type VaryingAir,
 } from '../physics/air.ts'
 import { DRY_AIR_GAS_CONSTANT, STANDARD_GRAVITY } from '../physics/constants.ts'
 import { geometricAltitude, geopotentialHeight } from '../physics/earth.ts'
@@ -47,7 +47,7 @@ export interface FieldLevel {
  * between levels temperature, wind and vapour pressure are linear in geopotential height and so is ln p;
  * beyond them as beyond a sounding's (ProfileAir).
  */
-export class FieldAir implements Air {
+export class FieldAir implements VaryingAir {
   readonly file: FieldFile
   private readonly tiles: FieldTiles
   private readonly logPressures: Float64Array
@@ -120,6 +120,26 @@ export class FieldAir implements Air {
     }
     out.viscosity = viscosity(out.temperature)
     if (!(out.density > 0)) tiles.refuse('values', latitude, longitude, time)
+  }
+
+  /** The next level's altitude above an altitude, over the place sampled last. */
+  breakAbove(altitude: number): number {
+    const height = geopotentialHeight(altitude)
+    const { tiles, lastInterval } = this
+    let level = this.interval
+    while (level > 0 && tiles.height(level - 1) > height) level--
+    while (level <= lastInterval + 1 && tiles.height(level) <= height) level++
+    return level > lastInterval + 1 ? Infinity : geometricAltitude(tiles.height(level))
+  }
+
+  /** The next level's altitude below an altitude, over the place sampled last. */
+  breakBelow(altitude: number): number {
+    const height = geopotentialHeight(altitude)
+    const { tiles, lastInterval } = this
+    let level = this.interval + 1
+    while (level <= lastInterval && tiles.height(level + 1) < height) level++
+    while (level >= 0 && tiles.height(level) >= height) level--
+    return level < 0 ? -Infinity : geometricAltitude(tiles.height(level))
   }
 
   /** The levels over a place, from the ground up. Radians, s since 1970 UTC. Throws as `sample`. */

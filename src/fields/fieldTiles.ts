@@ -2,7 +2,7 @@ import { type OutsidePolicy } from './fieldAir.ts'
 import { type FieldFile } from './fieldFile.ts'
 import { type GridPlace } from './grid.ts'
 import { type FieldCoverage, OutsideField } from './outsideField.ts'
-import { LEVEL_VALUES, TILE_CELLS, TILE_SIDE } from './tiles.ts'
+import { HEIGHT, LEVEL_VALUES, TILE_CELLS, TILE_SIDE } from './tiles.ts'
 
 /** Tiles kept in memory; one of 26 levels takes 150 kB, and a flight crosses two or three, twice in time. */
 const MOST_TILES = 48
@@ -114,6 +114,23 @@ export class FieldTiles {
         l10 * late[nextRow + slot] +
         l11 * late[opposite + slot]
     }
+  }
+
+  /** Geopotential height, m, of a level at the located place. */
+  height(level: number): number {
+    const { early, late, stride, rowStride } = this
+    const at = this.cell + level * LEVEL_VALUES + HEIGHT
+    const nextRow = at + rowStride
+    return (
+      this.e00 * early[at] +
+      this.e01 * early[at + stride] +
+      this.e10 * early[nextRow] +
+      this.e11 * early[nextRow + stride] +
+      this.l00 * late[at] +
+      this.l01 * late[at + stride] +
+      this.l10 * late[nextRow] +
+      this.l11 * late[nextRow + stride]
+    )
   }
 
   /** Whether the nearest place or time was taken for one outside since the last call. */

@@ -42,7 +42,7 @@ export function gasVolume(
 }
 
 /** Reynolds number at which a balloon rises steadily in this air; 0 where it has no lift. */
-function risingReynolds(
+export function risingReynolds(
   balloon: AscendingBalloon,
   air: AirState,
   volume: number,
@@ -54,7 +54,8 @@ function risingReynolds(
   return balloon.drag.reynolds((8 * lift * air.density) / (Math.PI * air.viscosity * air.viscosity))
 }
 
-function speed(reynolds: number, air: AirState, volume: number): number {
+/** Speed in m/s of a sphere of `volume` m³ at a Reynolds number. */
+export function speed(reynolds: number, air: AirState, volume: number): number {
   return (reynolds * air.viscosity) / (air.density * sphereDiameter(volume)) // Re = ρwD/μ
 }
 
@@ -89,19 +90,21 @@ export function ascend(
   let previousRate = releaseRate
   let burst = false
   while (!burst) {
-    if (slab >= column.count) throw noBurst(balloon, column)
+    if (slab >= column.count) throw noBurst(balloon, volumeAt(balloon, column, CEILING))
     const bottom = at.altitude
     let top = column.altitude(slab + 1)
     if (recorder) top = Math.min(top, bottom + recordedStep(column.windRange[slab], previousRate))
     if (reachesBurst(balloon, column, slab, top)) {
-      top = burstAltitude(balloon, column, bottom, top)
+      const volume = (altitude: number) => volumeAt(balloon, column, altitude)
+      top = burstAltitude(balloon.burstVolume, volume, bottom, top)
       burst = true
     }
     if (top > bottom) {
       column.mean(bottom, top, slabAir)
       const volume = gasVolume(balloon, slabAir.temperature, slabAir.pressure)
       const reynolds = risingReynolds(balloon, slabAir, volume, gravity((bottom + top) / 2))
-      if (reynolds === 0) throw stopsRising(balloon, column, bottom)
+      if (reynolds === 0)
+        throw stopsRising(balloon, bottom, leastDisplaced(balloon, column, bottom))
       if (reynolds < lowestReynolds) lowestReynolds = reynolds
       if (reynolds > highestReynolds) highestReynolds = reynolds
       previousRate = speed(reynolds, slabAir, volume)
@@ -119,7 +122,9 @@ export function ascend(
 
   air.sampleAltitude(at.altitude, pointAir)
   const burstRate = riseRate(balloon, pointAir, at.altitude)
-  if (!(burstRate > 0)) throw stopsRising(balloon, column, at.altitude)
+  if (!(burstRate > 0)) {
+    throw stopsRising(balloon, at.altitude, leastDisplaced(balloon, column, at.altitude))
+  }
   recorder?.record(at, burstRate, 'burst')
   return { releaseRate, burstRate, lowestReynolds, highestReynolds }
 }
@@ -141,16 +146,18 @@ function volumeAt(balloon: AscendingBalloon, column: Column, altitude: number): 
   return gasVolume(balloon, pointAir.temperature, pointAir.pressure)
 }
 
-/** The altitude in (bottom, top] m where the gas fills the burst volume, to a tenth of a millimetre. */
-function burstAltitude(
-  balloon: AscendingBalloon,
-  column: Column,
+/**
+ * The altitude in (bottom, top] m where the gas, whose volume in m³ at an altitude `volumeAt` tells, fills
+ * the burst volume, to a tenth of a millimetre.
+ */
+export function burstAltitude(
+  burstVolume: number,
+  volumeAt: (altitude: number) => number,
   bottom: number,
   top: number,
 ): number {
   // False position with the Illinois weight on ln V, which is nearly a straight line in altitude.
-  const excess = (altitude: number) =>
-    Math.log(volumeAt(balloon, column, altitude) / balloon.burstVolume)
+  const excess = (altitude: number) => Math.log(volumeAt(altitude) / burstVolume)
   let low = bottom
   let high = top
   let excessLow = excess(low)
@@ -176,24 +183,35 @@ function burstAltitude(
   return high
 }
 
-function noBurst(balloon: AscendingBalloon, column: Column): NotFlyable {
+/** `ceilingVolume`: what the gas has grown to at the ceiling, m³. */
+export function noBurst(balloon: AscendingBalloon, ceilingVolume: number): NotFlyable {
   return new NotFlyable({
     kind: 'no-burst',
     ratedBurstDiameter: sphereDiameter(balloon.burstVolume),
     ceiling: CEILING,
-    ceilingDiameter: sphereDiameter(volumeAt(balloon, column, CEILING)),
+    ceilingDiameter: sphereDiameter(ceilingVolume),
   })
 }
 
-function stopsRising(balloon: AscendingBalloon, column: Column, altitude: number): NotFlyable {
-  // Per mole the displaced air weighs R·(T+ΔT)·ρ/p; where that is least, the gas must still carry all.
-  let leastDisplaced = Infinity
+/** The least mass of air in kg, from an altitude up, that a mole of the gas displaces. */
+function leastDisplaced(balloon: AscendingBalloon, column: Column, altitude: number): number {
+  let least = Infinity
   for (let edge = column.slabAt(altitude); edge <= column.count; edge++) {
     const volumePerMole =
       (MOLAR_GAS_CONSTANT * (column.edgeTemperature[edge] + balloon.temperatureOffset)) /
       column.edgePressure[edge]
-    leastDisplaced = Math.min(leastDisplaced, volumePerMole * column.edgeDensity[edge])
+    least = Math.min(least, volumePerMole * column.edgeDensity[edge])
   }
+  return least
+}
+
+/** `leastDisplaced`: the least mass of air in kg that a mole of the gas displaces further up. */
+export function stopsRising(
+  balloon: AscendingBalloon,
+  altitude: number,
+  leastDisplaced: number,
+): NotFlyable {
+  // Where a mole of gas displaces least, the gas must still carry all.
   const { moles, gasMass, grossLift, neckLift } = balloon.fill
   const liftPerMole = leastDisplaced - gasMass / moles
   const neededMoles = (balloon.mass - gasMass) / liftPerMole

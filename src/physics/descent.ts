@@ -1,15 +1,8 @@
-import { emptyAirState } from './air.ts'
+import { emptyAirState, type AirState } from './air.ts'
 import { type Column } from './column.ts'
 import { drift, gravity } from './earth.ts'
+import { FallMotion, type FallingLoad } from './fallMotion.ts'
 import { recordedStep, type PathRecorder, type Whereabouts } from './path.ts'
-
-/** What comes down after the burst, SI. */
-export interface FallingLoad {
-  /** Payload and the share of the balloon left on the line, kg */
-  mass: number
-  /** Cd·A of the parachute, m² */
-  dragArea: number
-}
 
 /** How a descent ended, SI. The whereabouts passed in stand at the landing. */
 export interface DescentEnd {
@@ -18,7 +11,7 @@ export interface DescentEnd {
 }
 
 /** Steps in which the free fall after burst is taken. */
-const OPENING_STEPS = 10
+export const OPENING_STEPS = 10
 
 const slabAir = emptyAirState()
 const thirdAir = emptyAirState()
@@ -40,7 +33,8 @@ export function descend(
   at: Whereabouts,
   recorder?: PathRecorder,
 ): DescentEnd {
-  coast(load, burstRate, column, at)
+  column.air.sampleAltitude(at.altitude, pointAir)
+  coast(load, burstRate, pointAir, at)
   const fall = new Fall(load, column, at)
   recorder?.record(at, 0, 'descent')
 
@@ -65,36 +59,26 @@ export function descend(
 }
 
 /** The last metre upwards: gravity and drag stop the load. Exact for constant density. */
-function coast(load: FallingLoad, burstRate: number, column: Column, at: Whereabouts): void {
-  column.air.sampleAltitude(at.altitude, pointAir)
+export function coast(load: FallingLoad, burstRate: number, air: AirState, at: Whereabouts): void {
   const weight = gravity(at.altitude)
-  const k = (pointAir.density * load.dragArea) / load.mass
+  const k = (air.density * load.dragArea) / load.mass
   const excess = (k * burstRate * burstRate) / (2 * weight)
   const rise = Math.log1p(excess) / k // from d(w²)/dz = −2g − k·w²
   const duration = Math.atan(Math.sqrt(excess)) / Math.sqrt((weight * k) / 2) // from dw/dt = −g − ½·k·w²
-  drift(at, at.altitude, pointAir.windEast * duration, pointAir.windNorth * duration)
+  drift(at, at.altitude, air.windEast * duration, air.windNorth * duration)
   at.altitude += rise
   at.elapsed += duration
 }
 
 /** The state of a falling load, stepped down through a column. */
-class Fall {
-  /** w², m²/s² */
-  private square = 0
-  peakSquare = 0
-  private readonly load: FallingLoad
+class Fall extends FallMotion {
   private readonly column: Column
   private readonly at: Whereabouts
 
   constructor(load: FallingLoad, column: Column, at: Whereabouts) {
-    this.load = load
+    super(load)
     this.column = column
     this.at = at
-  }
-
-  /** m/s, downwards positive */
-  get speed(): number {
-    return Math.sqrt(this.square)
   }
 
   /** A step in σ = √(apex − z) down to altitude `to`, m. */
@@ -154,41 +138,6 @@ class Fall {
     }
     column.mean(to, from, slabAir)
     this.move(to, duration, slabAir.windEast, slabAir.windNorth)
-  }
-
-  /**
-   * Two-stage Radau IIA (Hairer and Wanner, Solving Ordinary Differential Equations II, table IV.5.5) on
-   * dq/dx = s·(2g − k·q) over a step `h` in x, with s = ds/dx. The equation is linear, so its two stages
-   * are a pair of linear equations. Returns the duration ∫ s/√q dx, seconds.
-   */
-  private radau(
-    h: number,
-    firstScale: number,
-    firstGravity: number,
-    firstDensity: number,
-    lastScale: number,
-    lastGravity: number,
-    lastDensity: number,
-  ): number {
-    const dragPerDensity = this.load.dragArea / this.load.mass // k/ρ
-    const firstPull = h * firstScale * 2 * firstGravity
-    const lastPull = h * lastScale * 2 * lastGravity
-    const firstDrag = h * firstScale * firstDensity * dragPerDensity
-    const lastDrag = h * lastScale * lastDensity * dragPerDensity
-    // q₁ = q₀ + 5/12·f₁ − 1/12·f₂ and q₂ = q₀ + 3/4·f₁ + 1/4·f₂ with f = pull − drag·q
-    const right1 = this.square + (5 * firstPull - lastPull) / 12
-    const right2 = this.square + (3 * firstPull + lastPull) / 4
-    const a11 = 1 + (5 / 12) * firstDrag
-    const a12 = -lastDrag / 12
-    const a21 = (3 / 4) * firstDrag
-    const a22 = 1 + lastDrag / 4
-    const determinant = a11 * a22 - a12 * a21
-    const first = (right1 * a22 - a12 * right2) / determinant
-    const last = (a11 * right2 - a21 * right1) / determinant
-    this.square = last
-    if (first > this.peakSquare) this.peakSquare = first
-    if (last > this.peakSquare) this.peakSquare = last
-    return h * ((0.75 * firstScale) / Math.sqrt(first) + (0.25 * lastScale) / Math.sqrt(last))
   }
 
   private move(to: number, duration: number, windEast: number, windNorth: number): void {

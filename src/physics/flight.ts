@@ -1,14 +1,17 @@
-import { emptyAirState } from './air.ts'
-import { ascend, gasVolume, type AscendingBalloon } from './ascent.ts'
+import { emptyAirState, type AirState, type VaryingAir } from './air.ts'
+import { ascend, gasVolume, type AscendingBalloon, type AscentEnd } from './ascent.ts'
 import { type Column } from './column.ts'
-import { descend } from './descent.ts'
+import { descend, type DescentEnd } from './descent.ts'
 import { dragCurve, type DragChoice } from './dragCurves.ts'
 import { wrapLongitude } from './earth.ts'
+import { type FallingLoad } from './fallMotion.ts'
 import { fill, type Fill } from './fill.ts'
 import { sphereDiameter, sphereVolume, type Gas } from './gas.ts'
 import { NotFlyable } from './notFlyable.ts'
 import { dragArea, type Parachute } from './parachute.ts'
 import { type PathRecorder, type Whereabouts } from './path.ts'
+import { ascendAlongPath } from './varyingAscent.ts'
+import { descendAlongPath } from './varyingDescent.ts'
 
 /** Changes whenever the same plan in the same air would give another answer; stored with every run. */
 export const MODEL_VERSION = '1.0'
@@ -55,18 +58,84 @@ export interface Flight {
   landing: Whereabouts & { speed: number }
 }
 
+/** The ways through some air. Each moves the whereabouts along. */
+interface Route {
+  sample(at: Whereabouts, out: AirState): void
+  ascend(balloon: AscendingBalloon, at: Whereabouts): AscentEnd
+  descend(
+    load: FallingLoad,
+    burstRate: number,
+    landingAltitude: number,
+    at: Whereabouts,
+  ): DescentEnd
+}
+
+function routeThroughColumn(column: Column, recorder?: PathRecorder): Route {
+  return {
+    sample: (at, out) => {
+      column.air.sampleAltitude(at.altitude, out)
+    },
+    ascend: (balloon, at) => ascend(balloon, column, at, recorder),
+    descend: (load, burstRate, landingAltitude, at) =>
+      descend(load, burstRate, landingAltitude, column, at, recorder),
+  }
+}
+
+/** Longest step, m, through air that varies. Halving it moves a landing by metres (tests/fields/flight.test.ts). */
+const LONGEST_STEP = 1000
+
+function routeAlongPath(
+  air: VaryingAir,
+  time: number,
+  longestStep: number,
+  recorder?: PathRecorder,
+): Route {
+  return {
+    sample: (at, out) => {
+      air.sample(at.latitude, at.longitude, at.altitude, time + at.elapsed, out)
+    },
+    ascend: (balloon, at) => ascendAlongPath(balloon, air, time, longestStep, at, recorder),
+    descend: (load, burstRate, landingAltitude, at) =>
+      descendAlongPath(load, burstRate, landingAltitude, air, time, longestStep, at, recorder),
+  }
+}
+
+/**
+ * Flies a plan through air that varies along the path, as `fly` does through one column. `longestStep`
+ * in m of altitude.
+ * @throws NotFlyable with the number that stands in the way; and what the air throws where it ends.
+ */
+export function flyAlongPath(
+  plan: FlightPlan,
+  air: VaryingAir,
+  recorder?: PathRecorder,
+  longestStep = LONGEST_STEP,
+): Flight {
+  return flyRoute(plan, routeAlongPath(air, plan.launch.time, longestStep, recorder))
+}
+
 /**
  * Flies a plan through one column of air: fill, ascent, burst, descent, landing.
  * @throws NotFlyable with the number that stands in the way.
  */
 export function fly(plan: FlightPlan, column: Column, recorder?: PathRecorder): Flight {
+  return flyRoute(plan, routeThroughColumn(column, recorder))
+}
+
+function flyRoute(plan: FlightPlan, route: Route): Flight {
   const { balloon, gas, neckLift, payloadMass, launch, landingAltitude } = plan
   if (!(neckLift > payloadMass)) {
     throw new NotFlyable({ kind: 'no-free-lift', neckLift, payloadMass })
   }
 
+  const at: Whereabouts = {
+    latitude: launch.latitude,
+    longitude: launch.longitude,
+    altitude: launch.altitude,
+    elapsed: 0,
+  }
   const air = emptyAirState()
-  column.air.sampleAltitude(launch.altitude, air)
+  route.sample(at, air)
   const filled = fill(neckLift, balloon.mass, payloadMass, gas, air)
   const ascending: AscendingBalloon = {
     fill: filled,
@@ -85,13 +154,7 @@ export function fly(plan: FlightPlan, column: Column, recorder?: PathRecorder): 
     })
   }
 
-  const at: Whereabouts = {
-    latitude: launch.latitude,
-    longitude: launch.longitude,
-    altitude: launch.altitude,
-    elapsed: 0,
-  }
-  const { burstRate, ...rates } = ascend(ascending, column, at, recorder)
+  const { burstRate, ...rates } = route.ascend(ascending, at)
   const burst = { ...at, longitude: wrapLongitude(at.longitude) }
   if (!(burst.altitude > landingAltitude)) {
     throw new NotFlyable({
@@ -101,18 +164,11 @@ export function fly(plan: FlightPlan, column: Column, recorder?: PathRecorder): 
     })
   }
 
-  column.air.sampleAltitude(burst.altitude, air)
+  route.sample(at, air)
   const { pressure, temperature } = air
   const fallingMass = payloadMass + balloon.shareLeftOnLine * balloon.mass
   const falling = { mass: fallingMass, dragArea: dragArea(plan.parachute, fallingMass) }
-  const { peakSpeed, landingSpeed } = descend(
-    falling,
-    burstRate,
-    landingAltitude,
-    column,
-    at,
-    recorder,
-  )
+  const { peakSpeed, landingSpeed } = route.descend(falling, burstRate, landingAltitude, at)
 
   return {
     fill: filled,

@@ -1,0 +1,93 @@
+import { emptyAirState, type VaryingAir } from './air.ts'
+import { coast, OPENING_STEPS, type DescentEnd } from './descent.ts'
+import { gravity } from './earth.ts'
+import { FallMotion, type FallingLoad } from './fallMotion.ts'
+import { recordedStep, type PathRecorder, type Whereabouts } from './path.ts'
+import { PathSampler, stepTowards } from './pathSampler.ts'
+
+/** Height, m, through which the free fall after burst is taken in steps of its own. */
+const OPENING_HEIGHT = 600
+
+const thirdAir = emptyAirState()
+const endAir = emptyAirState()
+
+/**
+ * Brings a load down through air that varies along the path, as `descend` does in one column: from its
+ * burst at `at`, where it still rises at `burstRate` m/s, to the landing altitude in m. `time` is the
+ * release in s since 1970 UTC. Both stages of each step see the air where and when the load will be there;
+ * no step crosses a kink of the air. Moves `at` to the landing.
+ */
+export function descendAlongPath(
+  load: FallingLoad,
+  burstRate: number,
+  landingAltitude: number,
+  air: VaryingAir,
+  time: number,
+  longestStep: number,
+  at: Whereabouts,
+  recorder?: PathRecorder,
+): DescentEnd {
+  const path = new PathSampler(air, time, at)
+  path.sampleHere(endAir)
+  coast(load, burstRate, endAir, at)
+  const fall = new FallMotion(load)
+  recorder?.record(at, 0, 'descent')
+
+  // √q starts from nothing, so the fall's beginning is stepped in σ = √s, in which the time is smooth.
+  const apex = at.altitude
+  const settled = Math.max(landingAltitude, apex - OPENING_HEIGHT)
+  const sigmaStep = Math.sqrt(apex - settled) / OPENING_STEPS
+  let duration = sigmaStep * Math.sqrt(2 / gravity(apex)) // of a fall without air
+  for (let step = 1; step <= OPENING_STEPS; step++) {
+    const to = step === OPENING_STEPS ? settled : apex - (step * sigmaStep) ** 2
+    const third = (step - 2 / 3) * sigmaStep
+    const thirdAltitude = apex - third * third
+    sampleStages(path, thirdAltitude, to, duration)
+    duration = fall.radau(
+      sigmaStep,
+      2 * third, // ds = 2σ·dσ
+      gravity(thirdAltitude),
+      thirdAir.density,
+      2 * step * sigmaStep,
+      gravity(to),
+      endAir.density,
+    )
+    moveTo(path, to, fall)
+    recorder?.record(at, -fall.speed, to > landingAltitude ? 'descent' : 'landing')
+  }
+
+  while (at.altitude > landingAltitude) {
+    const from = at.altitude
+    let to = Math.max(landingAltitude, stepTowards(from, air.breakBelow(from - 1), longestStep))
+    if (recorder) {
+      const range = path.windRange(endAir, () => {
+        path.sampleAhead(to, (from - to) / fall.speed, endAir.windEast, endAir.windNorth, endAir)
+      })
+      to = Math.max(to, from - recordedStep(range, fall.speed))
+    }
+    const third = from - (from - to) / 3
+    sampleStages(path, third, to, (from - to) / fall.speed)
+    fall.radau(from - to, 1, gravity(third), thirdAir.density, 1, gravity(to), endAir.density)
+    moveTo(path, to, fall)
+    recorder?.record(at, -fall.speed, to > landingAltitude ? 'descent' : 'landing')
+  }
+  return { peakSpeed: Math.sqrt(fall.peakSquare), landingSpeed: fall.speed }
+}
+
+/** Samples both stages of a step that will take about `duration` s, foretelling the drift from the last wind. */
+function sampleStages(path: PathSampler, third: number, to: number, duration: number): void {
+  const { windEast, windNorth } = endAir
+  path.sampleAhead(third, duration / 3, windEast, windNorth, thirdAir)
+  path.sampleAhead(to, duration, thirdAir.windEast, thirdAir.windNorth, endAir)
+}
+
+/** Drifts with the wind of each stage for the time that stage stands for. */
+function moveTo(path: PathSampler, to: number, fall: FallMotion): void {
+  const { firstDuration, lastDuration } = fall
+  path.move(
+    to,
+    firstDuration + lastDuration,
+    thirdAir.windEast * firstDuration + endAir.windEast * lastDuration,
+    thirdAir.windNorth * firstDuration + endAir.windNorth * lastDuration,
+  )
+}
