@@ -11,12 +11,10 @@ import { DRY_AIR_GAS_CONSTANT, STANDARD_GRAVITY } from '../physics/constants.ts'
 import { geometricAltitude, geopotentialHeight } from '../physics/earth.ts'
 import { type FieldFile } from './fieldFile.ts'
 import { FieldTiles } from './fieldTiles.ts'
+import { type OutsidePolicy } from './outsideField.ts'
 import { LAPSE_BELOW } from './missingLevels.ts'
 import { continueAbove } from './standardContinuation.ts'
 import { HEIGHT, LEVEL_VALUES, TEMPERATURE, VAPOUR, WIND_EAST, WIND_NORTH } from './tiles.ts'
-
-/** Whether air beyond a field's grid or times is refused, or the nearest air is taken. */
-export type OutsidePolicy = 'refuse' | 'hold'
 
 /** What a flight took from a field beyond what the field holds. */
 export interface FieldUse {

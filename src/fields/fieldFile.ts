@@ -1,7 +1,6 @@
 import { closeSync, fstatSync, openSync, readSync } from 'node:fs'
 import { vapourPressure } from '../physics/air.ts'
-import { MAGIC, TRAILER_BYTES } from './fieldWriter.ts'
-import { type FieldHeader } from './fieldHeader.ts'
+import { MAGIC, TRAILER_BYTES, type FieldHeader } from './fieldHeader.ts'
 import { type Grid } from './grid.ts'
 import { Octets } from './octets.ts'
 import { type Quantity } from './product.ts'

@@ -1,6 +1,12 @@
 import { type Origin, type Quantity } from './product.ts'
 import { type Skipped } from './planes.ts'
 
+/** First bytes of a field file; the digit is the form's version. */
+export const MAGIC = 'Driftbook field 1\n'
+
+/** At the end of a field file: where its header begins, and how long it is; two doubles. */
+export const TRAILER_BYTES = 16
+
 /** A stored forecast, but for its values. Times in s since 1970 UTC. */
 export interface FieldHeader {
   origin: Origin

@@ -1,7 +1,6 @@
-import { type OutsidePolicy } from './fieldAir.ts'
 import { type FieldFile } from './fieldFile.ts'
 import { type GridPlace } from './grid.ts'
-import { type FieldCoverage, OutsideField } from './outsideField.ts'
+import { type FieldCoverage, OutsideField, type OutsidePolicy } from './outsideField.ts'
 import { HEIGHT, LEVEL_VALUES, TILE_CELLS, TILE_SIDE } from './tiles.ts'
 
 /** Tiles kept in memory; one of 26 levels takes 150 kB, and a flight crosses two or three, twice in time. */

@@ -1,17 +1,17 @@
 import { open, rename, rm, type FileHandle } from 'node:fs/promises'
 import { dirname } from 'node:path'
-import { chooseLevels, type FieldHeader, type StoredPlane } from './fieldHeader.ts'
+import {
+  chooseLevels,
+  MAGIC,
+  TRAILER_BYTES,
+  type FieldHeader,
+  type StoredPlane,
+} from './fieldHeader.ts'
 import { GribError } from './gribError.ts'
 import { gribPlanes, SkippedMessages, type Plane } from './planes.ts'
 import { DEFAULT_MESSAGE_LIMITS, type MessageLimits } from './gribMessages.ts'
 import { type Quantity } from './product.ts'
 import { cutIntoTiles } from './tiles.ts'
-
-/** First bytes of a field file; the digit is the form's version. */
-export const MAGIC = 'Driftbook field 1\n'
-
-/** At the end of a field file: where its header begins, and how long it is; two doubles. */
-export const TRAILER_BYTES = 16
 
 /** Small planes are written together. */
 const WRITE_BYTES = 4 * 2 ** 20

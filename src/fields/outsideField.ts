@@ -1,3 +1,6 @@
+/** Whether air beyond a field's grid or times is refused, or the nearest air is taken. */
+export type OutsidePolicy = 'refuse' | 'hold'
+
 /** What a field covers. Angles in radians, times in s since 1970 UTC. */
 export interface FieldCoverage {
   grid: string
