@@ -52,7 +52,6 @@ export function unpackComplex(
   if (groups.missing > 2) throw damaged(`missing value management ${groups.missing}`)
   if (order > 2) throw damaged(`spatial differencing of order ${order}`) // 0 is what some encoders write for none
   if (count > points) throw damaged(`${count} groups for ${points} values`)
-  if (count === 0) return new Float64Array(points) // a constant field, as encoders in general use write it
   if (descriptorOctets > 6) throw damaged(`differencing descriptors of ${descriptorOctets} octets`)
 
   // Each list starts on a whole octet.

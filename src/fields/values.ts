@@ -34,8 +34,10 @@ export async function readValues(sections: FieldSections, grid: Grid): Promise<F
   if (packed !== (present ? countOnes(present, points) : points)) {
     throw damaged(`${packed} values for ${points} grid points`)
   }
-  const values = await packedIntegers(representation, sections.data, packed)
-  scale(values, representation)
+  const values =
+    packed === 0 || isConstant(representation, template)
+      ? new Float64Array(packed).fill(referenceValue(representation))
+      : scale(await packedIntegers(representation, sections.data, packed), representation)
   const spread = present ? atGridPoints(values, present, points) : values
   return inRows(spread, grid.columns, grid.rows, grid.scanning)
 }
@@ -48,7 +50,6 @@ async function packedIntegers(
 ): Promise<Float64Array> {
   const template = representation.u16(10)
   const bits = representation.u8(20)
-  const constant = () => new Float64Array(packed)
   switch (template) {
     case 0: {
       const bytes = data.from(6)
@@ -62,11 +63,10 @@ async function packedIntegers(
     case 3:
       return unpackComplex(representation, data, packed, template === 3)
     case 40:
-      return bits === 0 || packed === 0 ? constant() : unpackJpeg(data.from(6), packed)
+      return unpackJpeg(data.from(6), packed)
     case 41:
-      return bits === 0 || packed === 0 ? constant() : unpackPng(data.from(6), packed)
+      return unpackPng(data.from(6), packed)
     default: // 42
-      if (bits === 0) return constant()
       return decodeEntropy(
         data.from(6),
         {
@@ -80,15 +80,28 @@ async function packedIntegers(
   }
 }
 
-/** Y = (R + X·2^E)·10^−D in place. WMO-No. 306, vol. I.2, regulation 92.9.4. */
-function scale(values: Float64Array, representation: Octets): void {
+/** Without bits every value is the same, and nothing is packed; complex packing says so by having no groups. */
+function isConstant(representation: Octets, template: number): boolean {
+  const isComplex = template === 2 || template === 3
+  return (isComplex ? representation.u32(32) : representation.u8(20)) === 0
+}
+
+/** R: in a constant field the value itself, as encoders in general use write it whatever D says. */
+function referenceValue(representation: Octets): number {
   const reference = representation.f32(12)
+  if (!Number.isFinite(reference)) throw damaged('a reference value that is not a number')
+  return reference
+}
+
+/** Y = (R + X·2^E)·10^−D in place. WMO-No. 306, vol. I.2, regulation 92.9.4. */
+function scale(values: Float64Array, representation: Octets): Float64Array {
+  const reference = referenceValue(representation)
   const binary = 2 ** representation.s16(16)
   const decimal = 10 ** -representation.s16(18)
-  if (!Number.isFinite(reference)) throw damaged('a reference value that is not a number')
   for (let index = 0; index < values.length; index++) {
     values[index] = (reference + values[index] * binary) * decimal
   }
+  return values
 }
 
 /** The bitmap that applies, one bit a grid point, or null where every point has a value. */
