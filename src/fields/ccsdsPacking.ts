@@ -1,3 +1,4 @@
+import { unpack } from './bits.ts'
 import { damaged } from './gribError.ts'
 
 /** Template 5.42: how the adaptive entropy coder was set. */
@@ -48,11 +49,12 @@ export function decodeEntropy(
   }
   if (referenceInterval < 1) throw damaged('no reference samples')
   const interval = blockSize * referenceInterval
-  const coded = new Float64Array(interval)
+  const wholeBlocks = Math.ceil(count / blockSize) * blockSize
+  const coded = new Float64Array(Math.min(interval, wholeBlocks))
   const samples = new Float64Array(count)
   const reader = new BlockReader(bytes, coding, coded)
   for (let at = 0; at < count; at += interval) {
-    reader.readInterval(Math.min(interval, Math.ceil((count - at) / blockSize) * blockSize))
+    reader.readInterval(Math.min(interval, wholeBlocks - at))
     const wanted = Math.min(interval, count - at)
     if (coding.preprocessed) unpredict(coded, wanted, coding)
     else if (coding.signed) signExtend(coded, wanted, bitsPerSample)
@@ -61,18 +63,26 @@ export function decodeEntropy(
   return samples
 }
 
-/** Reads coded blocks bit by bit. */
+/** Zero bytes put after the coded ones, so that a window of bits may reach past their end. */
+const PADDING = 8
+
+/** Reads coded blocks. */
 class BlockReader {
   private readonly bytes: Uint8Array
+  private readonly end: number
   private readonly coding: EntropyCoding
   private readonly out: Float64Array
   private readonly optionBits: number
+  private readonly lowParts: Float64Array
   private bit = 0
 
   constructor(bytes: Uint8Array, coding: EntropyCoding, out: Float64Array) {
-    this.bytes = bytes
+    this.bytes = new Uint8Array(bytes.length + PADDING)
+    this.bytes.set(bytes)
+    this.end = bytes.length * 8
     this.coding = coding
     this.out = out
+    this.lowParts = new Float64Array(coding.blockSize)
     const { bitsPerSample, restricted } = coding
     // Table 5-1 and 5-2: bits of the option identifier.
     if (restricted && bitsPerSample <= 2) this.optionBits = 1
@@ -141,46 +151,74 @@ class BlockReader {
 
   /** Sample splitting: the high parts in unary, then the low parts of `low` bits. */
   private split(from: number, to: number, low: number): void {
-    const { out } = this
+    const { out, bytes, lowParts } = this
     const scale = 2 ** low
-    for (let index = from; index < to; index++) out[index] = this.unary() * scale
-    if (low > 0) for (let index = from; index < to; index++) out[index] += this.bits(low)
+    let { bit } = this
+    let window = windowAt(bytes, bit)
+    let left = 32 // bits of the window not used yet
+    let zeros = 0
+    for (let index = from; index < to;) {
+      const leading = Math.clz32(window)
+      if (leading < left) {
+        out[index++] = (zeros + leading) * scale
+        zeros = 0
+        window = (window << leading) << 1
+        left -= leading + 1
+        bit += leading + 1
+      } else {
+        zeros += left
+        bit += left
+        if (bit > this.end) throw endsEarly()
+        window = windowAt(bytes, bit)
+        left = 32
+      }
+    }
+    if (low > 0) {
+      bit = unpack(bytes, bit, low, to - from, lowParts, 0)
+      for (let index = from; index < to; index++) out[index] += lowParts[index - from]
+    }
+    this.bit = bit
+    this.skip(0)
   }
 
   /** The number of zeros before the next one. */
   private unary(): number {
-    const { bytes } = this
     let zeros = 0
-    let byte = this.bit >>> 3
-    let rest = (bytes[byte] << (24 + (this.bit & 7))) >>> 0
-    let left = 8 - (this.bit & 7)
-    while (rest === 0) {
-      zeros += left
-      byte++
-      if (byte >= bytes.length) throw damaged('entropy-coded samples that end too early')
-      rest = (bytes[byte] << 24) >>> 0
-      left = 8
+    let window = windowAt(this.bytes, this.bit)
+    while (window === 0) {
+      zeros += 32
+      this.skip(32)
+      window = windowAt(this.bytes, this.bit)
     }
-    const leading = Math.clz32(rest)
-    this.bit = byte * 8 + (8 - left) + leading + 1
+    const leading = Math.clz32(window)
+    this.skip(leading + 1)
     return zeros + leading
   }
 
+  /** The next `width` bits, 1 to 32, as a number. */
   private bits(width: number): number {
-    const { bytes } = this
-    const end = this.bit + width
-    if (end > bytes.length * 8) throw damaged('entropy-coded samples that end too early')
-    let value = 0
-    let bit = this.bit
-    while (bit < end) {
-      const skip = bit & 7
-      const take = Math.min(8 - skip, end - bit)
-      value = value * 2 ** take + ((bytes[bit >>> 3] >>> (8 - skip - take)) & ((1 << take) - 1))
-      bit += take
-    }
-    this.bit = end
+    const value = windowAt(this.bytes, this.bit) >>> (32 - width)
+    this.skip(width)
     return value
   }
+
+  private skip(bits: number): void {
+    this.bit += bits
+    if (this.bit > this.end) throw endsEarly()
+  }
+}
+
+function endsEarly() {
+  return damaged('entropy-coded samples that end too early')
+}
+
+/** The 32 bits from a bit on. */
+function windowAt(bytes: Uint8Array, bit: number): number {
+  const byte = bit >>> 3
+  const skip = bit & 7
+  const window =
+    (bytes[byte] << 24) | (bytes[byte + 1] << 16) | (bytes[byte + 2] << 8) | bytes[byte + 3]
+  return (window << skip) | (bytes[byte + 4] >>> (8 - skip))
 }
 
 /** Undoes the unit-delay predictor and its mapping to whole numbers, CCSDS 121.0-B-3, section 4. */
@@ -196,7 +234,7 @@ function unpredict(coded: Float64Array, length: number, coding: EntropyCoding): 
     const above = highest - sample
     const reach = Math.min(below, above)
     if (mapped > highest - lowest) throw damaged('an entropy-coded sample out of its range')
-    if (mapped <= 2 * reach) sample += mapped % 2 === 0 ? mapped / 2 : -(mapped + 1) / 2
+    if (mapped <= 2 * reach) sample += (mapped & 1) === 0 ? mapped / 2 : -(mapped + 1) / 2
     else sample = below < above ? lowest + mapped : highest - mapped
     coded[index] = sample
   }

@@ -31,14 +31,14 @@ export function unpackPng(bytes: Uint8Array, points: number): Float64Array {
   const rowBytes = Math.ceil((width * bits) / 8)
   let pixels: Uint8Array
   try {
-    // A small image can inflate to gigabytes, which the library does not look out for.
-    inflateSync(content, { maxOutputLength: height * (rowBytes + 1) })
+    // A small image can inflate to gigabytes, or to less than its size, and the library minds neither.
+    const inflated = inflateSync(content, { maxOutputLength: height * (rowBytes + 1) })
+    if (inflated.length !== height * (rowBytes + 1)) throw new Error('rows are missing')
     const image = decode(minimalPng(header, content))
-    pixels = image.data instanceof Uint16Array ? bigEndian(image.data) : Uint8Array.from(image.data)
+    pixels = image.data instanceof Uint16Array ? bigEndian(image.data) : new Uint8Array(image.data)
   } catch (error) {
     throw damaged(`a PNG image that does not decode: ${String(error)}`)
   }
-  if (pixels.length < height * rowBytes) throw damaged('a PNG image with rows missing')
   const values = new Float64Array(points)
   for (let row = 0; row < height; row++) {
     unpack(pixels, row * rowBytes * 8, bits, width, values, row * width)

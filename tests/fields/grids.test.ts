@@ -1,8 +1,10 @@
 // Expected places and values are the reference decoder's (ecCodes 2.28, grib_get_data).
 import geographiclib from 'geographiclib-geodesic'
 import { describe, expect, it } from 'vitest'
+import { coneThrough, ConformalCone } from '../../src/fields/conicGrid.ts'
 import { inRows } from '../../src/fields/scanning.ts'
 import { fixtureBytes, fixtureExpected, inMessageOrder, readPlanes } from './fixture.ts'
+import { CODES, gridSection, syntheticMessage } from './synthetic.ts'
 
 const DEGREE = Math.PI / 180
 
@@ -41,6 +43,68 @@ describe.each(['scanning', 'projections'])('%s', async (name) => {
       })
     },
   )
+})
+
+describe('a projected grid', () => {
+  // Octet 65 is the scanning mode; the grid of the fixture scans towards east and north.
+  const scanned = async (mode: number) => {
+    const section = gridSection('projections', 0)
+    section[64] = mode
+    const values = Array.from({ length: 20 }, (_, point) => point)
+    const message = syntheticMessage(section, {
+      code: CODES.temperature,
+      pressure: 50_000,
+      hours: 0,
+      values,
+    })
+    return (await readPlanes(message)).planes[0].grid
+  }
+
+  it.each([
+    [0x40, 1, 1],
+    [0x00, 1, -1],
+    [0xc0, -1, 1],
+    [0x80, -1, -1],
+  ])(
+    'has its first point first in scanning mode %i and runs on as that says',
+    async (mode, x, y) => {
+      const north = await scanned(0x40)
+      const grid = await scanned(mode)
+      for (const [column, row] of [
+        [0, 0],
+        [3, 2],
+      ]) {
+        const expected = north.position(column * x, row * y)
+        const got = grid.position(column, row)
+        expect(got.latitude).toBeCloseTo(expected.latitude, 12)
+        expect(got.longitude).toBeCloseTo(expected.longitude, 12)
+      }
+    },
+  )
+
+  it('with its apex in the south is the mirror of one with its apex in the north', () => {
+    const earth = { semiMajorAxis: 6_378_137, eccentricity: 0.0818 }
+    const [first, second] = [30 * DEGREE, 50 * DEGREE]
+    const north = new ConformalCone(earth, coneThrough(first, second, earth), first, 1)
+    const south = new ConformalCone(earth, coneThrough(-first, -second, earth), -first, 1)
+    const [a, b] = [
+      { x: 0, y: 0 },
+      { x: 0, y: 0 },
+    ]
+    for (const [latitude, longitude] of [
+      [0.3, 1.2],
+      [0.8, 0.4],
+    ]) {
+      north.project(latitude, longitude, a)
+      south.project(-latitude, longitude, b)
+      expect(b.x).toBeCloseTo(a.x, 5)
+      expect(b.y).toBeCloseTo(-a.y, 5)
+      expect(south.turn(longitude)).toBeCloseTo(-north.turn(longitude), 12)
+      const back = south.unproject(b.x, b.y)
+      expect(back.latitude).toBeCloseTo(-latitude, 10)
+      expect(back.longitude).toBeCloseTo(longitude, 10)
+    }
+  })
 })
 
 it('reads alternating columns by the words of WMO flag table 3.4', () => {

@@ -60,7 +60,7 @@ export function latLonSection(
 /** A GRIB edition 2 message with simple packing of 32 bits; NaN becomes a gap in a bitmap. */
 export function syntheticMessage(grid: Buffer, field: SyntheticField): Buffer {
   const numbers = field.values.filter((value) => !Number.isNaN(value))
-  const least = Math.fround(Math.min(...numbers, Infinity) - 1)
+  const least = Math.fround(numbers.reduce((a, b) => Math.min(a, b), Infinity) - 1)
   const reference = Number.isFinite(least) ? least : 0
   const identification = section(1, Buffer.from('0007000002010107db010a0c00000001', 'hex'))
   const product = Buffer.alloc(29)
