@@ -146,7 +146,11 @@ export class FieldFile {
     if (!(length > 0) || position + length !== size - TRAILER_BYTES) {
       throw new FieldFileError(path, 'a field file that is not whole')
     }
-    return JSON.parse(this.read(position, length).toString()) as FieldHeader
+    try {
+      return JSON.parse(this.read(position, length).toString()) as FieldHeader
+    } catch (error) {
+      throw new FieldFileError(path, `a header that cannot be read: ${String(error)}`)
+    }
   }
 
   private read(position: number, length: number): Buffer {

@@ -27,7 +27,7 @@ export interface FieldLimits extends MessageLimits {
 export const DEFAULT_FIELD_LIMITS: FieldLimits = {
   ...DEFAULT_MESSAGE_LIMITS,
   planes: 40_000,
-  decodedBytes: 64 * 2 ** 30,
+  decodedBytes: 16 * 2 ** 30,
 }
 
 /**

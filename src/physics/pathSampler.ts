@@ -22,18 +22,18 @@ export class PathSampler {
     this.air.sample(at.latitude, at.longitude, at.altitude, this.time + at.elapsed, out)
   }
 
-  /** Fills `out` with the air at an altitude in m, `duration` s from now, after a drift with this wind. */
+  /** Fills `out` with the air at an altitude in m, `duration` s from now and `east` and `north` m away. */
   sampleAhead(
     altitude: number,
     duration: number,
-    windEast: number,
-    windNorth: number,
+    east: number,
+    north: number,
     out: AirState,
   ): void {
     const { at, ahead } = this
     ahead.latitude = at.latitude
     ahead.longitude = at.longitude
-    drift(ahead, altitude, windEast * duration, windNorth * duration)
+    drift(ahead, altitude, east, north)
     const time = this.time + at.elapsed + duration
     this.air.sample(ahead.latitude, ahead.longitude, altitude, time, out)
   }
@@ -44,13 +44,6 @@ export class PathSampler {
     drift(at, (at.altitude + altitude) / 2, east, north)
     at.altitude = altitude
     at.elapsed += duration
-  }
-
-  /** Difference of wind, m/s, between `state` as it is and as `resample` leaves it. */
-  windRange(state: AirState, resample: () => void): number {
-    const { windEast, windNorth } = state
-    resample()
-    return Math.hypot(state.windEast - windEast, state.windNorth - windNorth)
   }
 }
 

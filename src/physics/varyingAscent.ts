@@ -26,8 +26,10 @@ const end = emptyAirState()
 
 /**
  * Flies a balloon from `at`, released at `time` (s since 1970 UTC), up to its burst through air that
- * varies along the path. The midpoint rule in altitude: each step sees the air at its middle, where and
- * when the balloon will be there; no step crosses a kink of the air. Moves `at` to the burst.
+ * varies along the path: Kutta's third-order method in altitude (Hairer, Nørsett and Wanner, Solving
+ * Ordinary Differential Equations I, II.1) on dt/dz = 1/w and dx/dz = wind/w, each stage where and when the
+ * balloon will be there; a step's last stage serves as the next one's first. No step crosses a kink of the
+ * air. Moves `at` to the burst.
  * @throws NotFlyable where it stops rising or has not burst at the ceiling.
  */
 export function ascendAlongPath(
@@ -39,22 +41,23 @@ export function ascendAlongPath(
   recorder?: PathRecorder,
 ): AscentEnd {
   const path = new PathSampler(air, time, at)
-  let lowestReynolds = Infinity
-  let highestReynolds = 0
   path.sampleHere(end)
   const releaseRate = riseRate(balloon, end, at.altitude)
   if (!(releaseRate > 0)) throw stopsRisingHere(balloon, path, at)
   recorder?.record(at, releaseRate, 'ascent')
+  let lowestReynolds = Infinity
+  let highestReynolds = 0
 
-  let rate = releaseRate
-  let windEast = end.windEast
-  let windNorth = end.windNorth
-  /** Samples the air where the balloon will be at an altitude. */
-  const sampleAt = (altitude: number, out: AirState) => {
-    path.sampleAhead(altitude, (altitude - at.altitude) / rate, windEast, windNorth, out)
+  /** Seconds a metre and m/s at the start of a step: the end of the one before. */
+  let startSlowness = 1 / releaseRate
+  let startEast = end.windEast
+  let startNorth = end.windNorth
+  const sampleFromStart = (altitude: number, out: AirState) => {
+    const duration = (altitude - at.altitude) * startSlowness
+    path.sampleAhead(altitude, duration, startEast * duration, startNorth * duration, out)
   }
   const volumeAt = (altitude: number) => {
-    sampleAt(altitude, end)
+    sampleFromStart(altitude, end)
     return gasVolume(balloon, end.temperature, end.pressure)
   }
 
@@ -64,40 +67,49 @@ export function ascendAlongPath(
     if (bottom >= CEILING) throw noBurst(balloon, volumeAt(CEILING))
     let top = Math.min(CEILING, stepTowards(bottom, air.breakAbove(bottom + 1), longestStep))
     if (recorder) {
-      const range = path.windRange(end, () => {
-        sampleAt(top, end)
-      })
-      top = Math.min(top, bottom + recordedStep(range, rate))
+      sampleFromStart(top, end)
+      const range = Math.hypot(end.windEast - startEast, end.windNorth - startNorth)
+      top = Math.min(top, bottom + recordedStep(range, 1 / startSlowness))
     }
-    sampleAt((bottom + top) / 2, middle)
+    sampleFromStart((bottom + top) / 2, middle)
     if (foretoldVolume(balloon, middle, top - bottom) >= balloon.burstVolume) {
       if (volumeAt(top) >= balloon.burstVolume) {
         top = burstAltitude(balloon.burstVolume, volumeAt, bottom, top)
         burst = true
-        sampleAt((bottom + top) / 2, middle)
+        sampleFromStart((bottom + top) / 2, middle)
       }
     }
+    const height = top - bottom
     const volume = gasVolume(balloon, middle.temperature, middle.pressure)
     const reynolds = risingReynolds(balloon, middle, volume, gravity((bottom + top) / 2))
     if (reynolds === 0) throw stopsRisingHere(balloon, path, at)
     if (reynolds < lowestReynolds) lowestReynolds = reynolds
     if (reynolds > highestReynolds) highestReynolds = reynolds
-    rate = speed(reynolds, middle, volume)
-    windEast = middle.windEast
-    windNorth = middle.windNorth
-    const duration = (top - bottom) / rate
-    path.move(top, duration, windEast * duration, windNorth * duration)
-    if (recorder && !burst) {
-      path.sampleHere(end)
-      recorder.record(at, riseRate(balloon, end, top), 'ascent')
-    }
+    const slowness = 1 / speed(reynolds, middle, volume)
+    const east = middle.windEast * slowness
+    const north = middle.windNorth * slowness
+    path.sampleAhead(
+      top,
+      height * (1.5 * slowness - 0.5 * startSlowness),
+      height * (1.5 * east - 0.5 * startEast * startSlowness),
+      height * (1.5 * north - 0.5 * startNorth * startSlowness),
+      end,
+    )
+    const endRate = riseRate(balloon, end, top)
+    if (!(endRate > 0)) throw stopsRisingHere(balloon, path, at)
+    const endSlowness = 1 / endRate
+    path.move(
+      top,
+      (height / 6) * (startSlowness + 4 * slowness + endSlowness),
+      (height / 6) * (startEast * startSlowness + 4 * east + end.windEast * endSlowness),
+      (height / 6) * (startNorth * startSlowness + 4 * north + end.windNorth * endSlowness),
+    )
+    startSlowness = endSlowness
+    startEast = end.windEast
+    startNorth = end.windNorth
+    recorder?.record(at, endRate, burst ? 'burst' : 'ascent')
   }
-
-  path.sampleHere(end)
-  const burstRate = riseRate(balloon, end, at.altitude)
-  if (!(burstRate > 0)) throw stopsRisingHere(balloon, path, at)
-  recorder?.record(at, burstRate, 'burst')
-  return { releaseRate, burstRate, lowestReynolds, highestReynolds }
+  return { releaseRate, burstRate: 1 / startSlowness, lowestReynolds, highestReynolds }
 }
 
 /** The most that the gas may fill, m³, at the top of a step of `height` m with this air at its middle. */

@@ -42,7 +42,7 @@ export function descendAlongPath(
     const to = step === OPENING_STEPS ? settled : apex - (step * sigmaStep) ** 2
     const third = (step - 2 / 3) * sigmaStep
     const thirdAltitude = apex - third * third
-    sampleStages(path, thirdAltitude, to, duration)
+    sampleOpening(path, thirdAltitude, to, duration)
     duration = fall.radau(
       sigmaStep,
       2 * third, // ds = 2σ·dσ
@@ -60,13 +60,14 @@ export function descendAlongPath(
     const from = at.altitude
     let to = Math.max(landingAltitude, stepTowards(from, air.breakBelow(from - 1), longestStep))
     if (recorder) {
-      const range = path.windRange(endAir, () => {
-        path.sampleAhead(to, (from - to) / fall.speed, endAir.windEast, endAir.windNorth, endAir)
-      })
+      const { windEast, windNorth } = endAir
+      const duration = (from - to) / fall.speed
+      path.sampleAhead(to, duration, windEast * duration, windNorth * duration, thirdAir)
+      const range = Math.hypot(thirdAir.windEast - windEast, thirdAir.windNorth - windNorth)
       to = Math.max(to, from - recordedStep(range, fall.speed))
     }
     const third = from - (from - to) / 3
-    sampleStages(path, third, to, (from - to) / fall.speed)
+    sampleStages(path, third, to, from - to, fall.speed)
     fall.radau(from - to, 1, gravity(third), thirdAir.density, 1, gravity(to), endAir.density)
     moveTo(path, to, fall)
     recorder?.record(at, -fall.speed, to > landingAltitude ? 'descent' : 'landing')
@@ -74,11 +75,44 @@ export function descendAlongPath(
   return { peakSpeed: Math.sqrt(fall.peakSquare), landingSpeed: fall.speed }
 }
 
-/** Samples both stages of a step that will take about `duration` s, foretelling the drift from the last wind. */
-function sampleStages(path: PathSampler, third: number, to: number, duration: number): void {
+/**
+ * Samples both stages of a step of `height` m that starts at `speed` m/s. The way to the end is foretold
+ * from twice the third's less the start's, which leaves the stages' weights, ¾ and ¼, of third order (the
+ * conditions: Hairer, Nørsett and Wanner, Solving Ordinary Differential Equations I, II.1). A settled load's
+ * speed goes with ρ^−½.
+ */
+function sampleStages(
+  path: PathSampler,
+  third: number,
+  to: number,
+  height: number,
+  speed: number,
+): void {
+  const { windEast, windNorth, density } = endAir
+  const slowness = 1 / speed
+  const toThird = (height / 3) * slowness
+  path.sampleAhead(third, toThird, windEast * toThird, windNorth * toThird, thirdAir)
+  const thirdSlowness = slowness * Math.sqrt(thirdAir.density / density)
+  path.sampleAhead(
+    to,
+    height * (2 * thirdSlowness - slowness),
+    height * (2 * thirdAir.windEast * thirdSlowness - windEast * slowness),
+    height * (2 * thirdAir.windNorth * thirdSlowness - windNorth * slowness),
+    endAir,
+  )
+}
+
+/** Samples both stages of a step in σ, which takes about as long as the one before, `duration` s. */
+function sampleOpening(path: PathSampler, third: number, to: number, duration: number): void {
   const { windEast, windNorth } = endAir
-  path.sampleAhead(third, duration / 3, windEast, windNorth, thirdAir)
-  path.sampleAhead(to, duration, thirdAir.windEast, thirdAir.windNorth, endAir)
+  path.sampleAhead(
+    third,
+    duration / 3,
+    (windEast * duration) / 3,
+    (windNorth * duration) / 3,
+    thirdAir,
+  )
+  path.sampleAhead(to, duration, windEast * duration, windNorth * duration, endAir)
 }
 
 /** Drifts with the wind of each stage for the time that stage stands for. */

@@ -1,8 +1,15 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
-import { GribError } from '../../src/fields/gribError.ts'
 import { decodeEntropy } from '../../src/fields/ccsdsPacking.ts'
+import { FieldAir } from '../../src/fields/fieldAir.ts'
+import { type FieldFile } from '../../src/fields/fieldFile.ts'
+import { GribError } from '../../src/fields/gribError.ts'
+import { OutsideField } from '../../src/fields/outsideField.ts'
+import { flyAlongPath } from '../../src/physics/flight.ts'
+import { NotFlyable } from '../../src/physics/notFlyable.ts'
+import { standardFlight } from '../physics/plans.ts'
 import { fixtureBytes, readPlanes } from './fixture.ts'
+import { fieldFolder } from './storedField.ts'
 
 /** Reads what may be anything; all that is allowed beside planes is a typed error. */
 async function readAny(bytes: Uint8Array): Promise<void> {
@@ -103,4 +110,51 @@ describe('no bytes do harm', () => {
       { numRuns: 500 },
     )
   })
+})
+
+describe('a damaged forecast', () => {
+  const whole = fixtureBytes('gfs-region')
+  const lengths = splitMessages(whole).map((message) => message.length)
+  const fields = fieldFolder()
+
+  it('is refused, or flown, or the flight is refused: nothing else', async () => {
+    const outcomes = { refused: 0, flown: 0, notFlown: 0 }
+    let round = 0
+    await fc.assert(
+      fc.asyncProperty(
+        fc.array(fc.tuple(fc.nat(lengths.length - 1), fc.nat()), { minLength: 1, maxLength: 6 }),
+        async (flips) => {
+          const bytes = Buffer.from(whole)
+          for (const [nth, flip] of flips) {
+            const start = lengths.slice(0, nth).reduce((sum, length) => sum + length, 0)
+            const bit = (start + 16) * 8 + (flip % ((lengths[nth] - 20) * 8))
+            bytes[bit >> 3] ^= 0x80 >> (bit & 7)
+          }
+          let file: FieldFile
+          try {
+            file = await fields.store(bytes, `damaged-${round++}`)
+          } catch (error) {
+            if (!(error instanceof GribError)) throw error
+            outcomes.refused++
+            return
+          }
+          const plan = standardFlight({ altitude: 345, latitude: 40, longitude: -95 })
+          const launch = { ...plan.launch, time: file.header.validTimes[0] + 600 }
+          try {
+            const { landing } = flyAlongPath({ ...plan, launch }, new FieldAir(file, 'hold'))
+            expect(Number.isFinite(landing.latitude + landing.longitude + landing.elapsed)).toBe(
+              true,
+            )
+            outcomes.flown++
+          } catch (error) {
+            if (!(error instanceof NotFlyable || error instanceof OutsideField)) throw error
+            outcomes.notFlown++
+          }
+        },
+      ),
+      { numRuns: 60 },
+    )
+    expect(outcomes.refused).toBeGreaterThan(0)
+    expect(outcomes.flown).toBeGreaterThan(0)
+  }, 60_000)
 })
