@@ -26,10 +26,14 @@ const end = emptyAirState()
 
 /**
  * Flies a balloon from `at`, released at `time` (s since 1970 UTC), up to its burst through air that
- * varies along the path: Kutta's third-order method in altitude (Hairer, Nørsett and Wanner, Solving
- * Ordinary Differential Equations I, II.1) on dt/dz = 1/w and dx/dz = wind/w, each stage where and when the
- * balloon will be there; a step's last stage serves as the next one's first. No step crosses a kink of the
- * air. Moves `at` to the burst.
+ * varies along the path. Moves `at` to the burst.
+ *
+ * dt/dz = 1/w and dx/dz = wind/w in steps that cross no kink of the air, with stages at the start, the
+ * middle and the end, each where and when the balloon will be there, in Simpson's weights. The way to the
+ * end is foretold with 1½ of the middle's velocity less ½ of the start's, and that stage serves as the
+ * next step's start. By Taylor's series its place is then ¼·h²·f′ too far, which gives the next step back
+ * the h³·f_y·f′/24 that these weights fall short of third order (the conditions: Hairer, Nørsett and
+ * Wanner, Solving Ordinary Differential Equations I, II.1): third order at two samples a step.
  * @throws NotFlyable where it stops rising or has not burst at the ceiling.
  */
 export function ascendAlongPath(
