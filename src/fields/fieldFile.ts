@@ -3,6 +3,7 @@ import { vapourPressure } from '../physics/air.ts'
 import { MAGIC, TRAILER_BYTES, type FieldHeader } from './fieldHeader.ts'
 import { type Grid } from './grid.ts'
 import { Octets } from './octets.ts'
+import { type FieldCoverage } from './outsideField.ts'
 import { type Quantity } from './product.ts'
 import { readGrid } from './readGrid.ts'
 import { completePoint } from './missingLevels.ts'
@@ -50,6 +51,24 @@ export class FieldFile {
     } catch (error) {
       closeSync(this.descriptor)
       throw error
+    }
+  }
+
+  /** Where and when the field has air. */
+  get coverage(): FieldCoverage {
+    const { grid } = this
+    const { validTimes } = this.header
+    const [lastColumn, lastRow] = [grid.columns - 1, grid.rows - 1]
+    return {
+      grid: grid.description,
+      corners: [
+        grid.position(0, 0),
+        grid.position(lastColumn, 0),
+        grid.position(0, lastRow),
+        grid.position(lastColumn, lastRow),
+      ],
+      firstTime: validTimes[0],
+      lastTime: validTimes[validTimes.length - 1],
     }
   }
 

@@ -1,6 +1,6 @@
 import { type FieldFile } from './fieldFile.ts'
 import { type GridPlace } from './grid.ts'
-import { type FieldCoverage, OutsideField, type OutsidePolicy } from './outsideField.ts'
+import { OutsideField, type OutsidePolicy } from './outsideField.ts'
 import { HEIGHT, LEVEL_VALUES, TILE_CELLS, TILE_SIDE } from './tiles.ts'
 
 /** Tiles kept in memory; one of 26 levels takes 150 kB, and a flight crosses two or three, twice in time. */
@@ -140,23 +140,7 @@ export class FieldTiles {
   }
 
   refuse(beyond: OutsideField['beyond'], latitude: number, longitude: number, time: number): never {
-    throw new OutsideField(beyond, { latitude, longitude, time }, this.coverage())
-  }
-
-  private coverage(): FieldCoverage {
-    const { grid } = this.file
-    const corner = (column: number, row: number) => grid.position(column, row)
-    return {
-      grid: grid.description,
-      corners: [
-        corner(0, 0),
-        corner(grid.columns - 1, 0),
-        corner(0, grid.rows - 1),
-        corner(grid.columns - 1, grid.rows - 1),
-      ],
-      firstTime: this.times[0],
-      lastTime: this.times[this.lastTime],
-    }
+    throw new OutsideField(beyond, { latitude, longitude, time }, this.file.coverage)
   }
 
   /** Finds the valid times around `time`; returns the share of the later one. */

@@ -39,6 +39,16 @@ describe('storing a field', () => {
     expect(readdirSync(fields.folder)).toEqual([])
   })
 
+  it('leaves nothing behind where its source breaks off', async () => {
+    async function* broken(): AsyncGenerator<Uint8Array> {
+      yield fixtureBytes('gfs-region').subarray(0, 60_000)
+      await Promise.resolve()
+      throw new Error('the line went dead')
+    }
+    await expect(storeField(broken(), fields.path('never'))).rejects.toThrow('the line went dead')
+    expect(readdirSync(fields.folder)).toEqual([])
+  })
+
   it('stops at its limits', async () => {
     const limits = { ...DEFAULT_FIELD_LIMITS, decodedBytes: 10_000 }
     const stored = storeField(inChunks(fixtureBytes('gfs-region')), fields.path('never'), limits)
