@@ -31,13 +31,14 @@ export class ConformalCone {
     const atPole = Math.abs(trueParallel) > Math.PI / 2 - 1e-9
     const ratio = atPole
       ? 2 / Math.sqrt((1 + e) ** (1 + e) * (1 - e) ** (1 - e)) // m/t at the pole, eq. 21-33
-      : parallelRadius(trueParallel, e) / this.isometric(trueParallel) ** cone
+      : parallelRadius(trueParallel, e) * Math.exp(cone * isometricLatitude(trueParallel, e))
     this.scale = (earth.semiMajorAxis * ratio) / cone // a·F, eq. 15-10 and 21-34
   }
 
   /** Plane coordinates in m of a latitude and longitude in radians; y is 0 at the apex. */
   project(latitude: number, longitude: number, out: { x: number; y: number }): void {
-    const radius = this.scale * this.isometric(latitude) ** this.cone // eq. 15-7
+    const radius =
+      this.scale * Math.exp(-this.cone * isometricLatitude(latitude, this.eccentricity)) // eq. 15-7
     const angle = this.angle(longitude)
     out.x = radius * Math.sin(angle) // eq. 14-1
     out.y = -radius * Math.cos(angle) // eq. 14-2 with ρ₀ = 0
@@ -66,29 +67,26 @@ export class ConformalCone {
   private angle(longitude: number): number {
     return this.cone * wrapLongitude(longitude - this.centralLongitude) // eq. 14-4
   }
-
-  /** Snyder's t, eq. 15-9 and 15-9a. */
-  private isometric(latitude: number): number {
-    const e = this.eccentricity
-    const onSphere = Math.tan(Math.PI / 4 - latitude / 2)
-    if (e === 0) return onSphere
-    const sine = e * Math.sin(latitude)
-    return onSphere / ((1 - sine) / (1 + sine)) ** (e / 2)
-  }
 }
 
 /** Snyder's n of the cone through two parallels of true scale, radians, eq. 15-8. */
 export function coneThrough(first: number, second: number, earth: EarthShape): number {
   if (Math.abs(first - second) < 1e-9) return Math.sin(first)
   const e = earth.eccentricity
-  const logIsometric = (latitude: number) => {
-    const sine = e * Math.sin(latitude)
-    return (
-      Math.log(Math.tan(Math.PI / 4 - latitude / 2)) - (e / 2) * Math.log((1 - sine) / (1 + sine))
-    )
-  }
   const parallels = Math.log(parallelRadius(first, e) / parallelRadius(second, e))
-  return parallels / (logIsometric(first) - logIsometric(second))
+  return parallels / (isometricLatitude(second, e) - isometricLatitude(first, e))
+}
+
+/** Isometric latitude, eq. 3-7: Snyder's t of eq. 15-9 is the exponential of its negative. */
+function isometricLatitude(latitude: number, eccentricity: number): number {
+  const sine = Math.sin(latitude)
+  const onSphere = inverseTanh(sine)
+  return eccentricity === 0 ? onSphere : onSphere - eccentricity * inverseTanh(eccentricity * sine)
+}
+
+/** Twice as fast as Math.atanh, which is exact near 0, where this is to 1e-16 all the same. */
+function inverseTanh(x: number): number {
+  return 0.5 * Math.log((1 + x) / (1 - x))
 }
 
 /** Snyder's m, eq. 14-15: radius of a parallel over the semi-major axis. */

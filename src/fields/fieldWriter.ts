@@ -87,7 +87,7 @@ class PlaneWriter {
     await this.append(Buffer.from(MAGIC, 'latin1'))
   }
 
-  /** Stores a plane of the first one's grid and model; of two for the same place and time the later run's. */
+  /** Stores a plane of the first one's grid and centre; of two for the same place and time the later run's. */
   async add(plane: Plane): Promise<void> {
     this.planes++
     this.decodedBytes += plane.values.length * Float32Array.BYTES_PER_ELEMENT
@@ -105,8 +105,9 @@ class PlaneWriter {
       this.skipped.add(`${plane.quantity}: on another grid than the first`)
       return
     }
-    if (plane.origin.centre !== origin.centre || plane.origin.process !== origin.process) {
-      this.skipped.add(`${plane.quantity}: from another centre or process than the first`)
+    // The process may differ: some centres number a run's analysis otherwise than its forecasts.
+    if (plane.origin.centre !== origin.centre) {
+      this.skipped.add(`${plane.quantity}: from another centre than the first`)
       return
     }
     const key = `${plane.quantity} ${plane.pressure} ${plane.validTime}`

@@ -86,7 +86,7 @@ describe('storing a field', () => {
     )
     expect(file.header.skipped).toEqual([
       { reason: 'geopotentialHeight: given twice for a level and time', messages: 1 },
-      { reason: 'geopotentialHeight: from another centre or process than the first', messages: 1 },
+      { reason: 'geopotentialHeight: from another centre than the first', messages: 1 },
       { reason: 'geopotentialHeight: on another grid than the first', messages: 1 },
     ])
   })
