@@ -25,7 +25,7 @@ CREATE TABLE flights (
 ) STRICT;
 
 CREATE INDEX flights_by_launch_time ON flights (launch_time);
-CREATE INDEX flights_by_profile ON flights (profile_id);
+CREATE INDEX flights_by_profile ON flights (profile_id) WHERE profile_id IS NOT NULL;
 
 -- Every prediction ever answered, never changed. `answer` is its JSON, `track` its packed points.
 CREATE TABLE runs (
@@ -37,7 +37,7 @@ CREATE TABLE runs (
 ) STRICT;
 
 CREATE INDEX runs_by_flight ON runs (flight_id, id);
-CREATE INDEX runs_by_profile ON runs (profile_id);
+CREATE INDEX runs_by_profile ON runs (profile_id) WHERE profile_id IS NOT NULL;
 
 -- First answers to creating requests that carried an Idempotency-Key.
 CREATE TABLE first_answers (

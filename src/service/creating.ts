@@ -26,7 +26,7 @@ export async function answerCreation(
   const key = request.headers['idempotency-key']
   if (typeof key !== 'string') {
     const creation = await create()
-    store.atomically(creation.store)
+    await store.commit(creation.store)
     return send(reply, creation.location, JSON.stringify(creation.answer))
   }
 
@@ -35,21 +35,19 @@ export async function answerCreation(
   if (known) return send(reply, known.location, known.answer)
   const { location, answer, store: write } = await create()
   const text = JSON.stringify(answer)
-  // The same request may have been answered while this one was being worked out.
-  const overtaken = store.atomically(() => {
+  let answered: { location: string | null; answer: string } = { location, answer: text }
+  await store.commit(() => {
+    // The same request may have been answered while this one was being worked out.
     const other = firstAnswer(store, key, digest)
-    if (other) return other
+    if (other) {
+      answered = other
+      return
+    }
     write()
-    store.firstAnswers.insert({
-      key,
-      digest,
-      location,
-      answer: text,
-      createdAt: new Date().toISOString(),
-    })
-    return undefined
+    const createdAt = new Date().toISOString()
+    store.firstAnswers.insert({ key, digest, location, answer: text, createdAt })
   })
-  return overtaken ? send(reply, overtaken.location, overtaken.answer) : send(reply, location, text)
+  return send(reply, answered.location, answered.answer)
 }
 
 function firstAnswer(store: Store, key: string, digest: Buffer) {

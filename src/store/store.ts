@@ -1,6 +1,7 @@
 import type Database from 'better-sqlite3'
 import { FirstAnswers } from './firstAnswers.ts'
 import { Flights } from './flights.ts'
+import { GroupCommit } from './groupCommit.ts'
 import { openDatabase } from './database.ts'
 import { Profiles } from './profiles.ts'
 import { Runs } from './runs.ts'
@@ -12,19 +13,24 @@ export class Store {
   readonly profiles: Profiles
   readonly firstAnswers: FirstAnswers
   private readonly database: Database.Database
+  private readonly group: GroupCommit
 
   /** Opens the database `file`, applying what is new in the folder `migrations`. */
   constructor(file: string, migrations: string) {
     this.database = openDatabase(file, migrations)
+    this.group = new GroupCommit(this.database)
     this.flights = new Flights(this.database)
     this.runs = new Runs(this.database)
     this.profiles = new Profiles(this.database)
     this.firstAnswers = new FirstAnswers(this.database)
   }
 
-  /** Runs `work` as one transaction: all that it writes is stored, or none where it throws. */
-  atomically<Result>(work: () => Result): Result {
-    return this.database.transaction(work).immediate()
+  /**
+   * Runs `write` as one transaction: all that it writes is stored, or none where it throws. Resolves when
+   * it is on the disk, together with what other requests write at the same moment.
+   */
+  commit(write: () => void): Promise<void> {
+    return this.group.commit(write)
   }
 
   close(): void {
