@@ -131,7 +131,8 @@ export function chooseLevels(stored: Iterable<StoredPlane>): Choice | null {
 }
 
 function hasAll(levels: ReadonlySet<number>, wanted: ReadonlySet<number>): boolean {
-  return levels.size >= wanted.size && Array.from(wanted).every((level) => levels.has(level))
+  for (const level of wanted) if (!levels.has(level)) return false
+  return true
 }
 
 function getOrAdd<K, V>(map: Map<K, V>, key: K, make: () => V): V {

@@ -68,7 +68,8 @@ class PlaneWriter {
   private readonly file: FileHandle
   private readonly skipped: SkippedMessages
   private readonly stored = new Map<string, StoredPlane>()
-  private first: Plane | null = null
+  /** What every plane has in common with the first one. */
+  private first: Pick<Plane, 'grid' | 'gridSection' | 'origin'> | null = null
   private readonly limits: FieldLimits
   /** Written or waiting to be */
   private end = 0
@@ -99,7 +100,11 @@ class PlaneWriter {
     }
     const extent = range(plane.values)
     checkPlausible(plane.quantity, extent)
-    this.first ??= plane
+    this.first ??= {
+      grid: plane.grid,
+      gridSection: plane.gridSection.slice(), // a copy: the rest of the message is not to be kept
+      origin: plane.origin,
+    }
     const { grid, gridSection, origin } = this.first
     if (Buffer.compare(plane.gridSection, gridSection) !== 0) {
       this.skipped.add(`${plane.quantity}: on another grid than the first`)

@@ -21,7 +21,10 @@ export class GroupCommit {
   /** Runs `write` in a transaction soon; resolves when it is synced to the disk, rejects where it throws. */
   commit(write: () => void): Promise<void> {
     return new Promise((stored, failed) => {
-      if (this.waiting.length === 0) setImmediate(() => { this.flush(); })
+      if (this.waiting.length === 0)
+        setImmediate(() => {
+          this.flush()
+        })
       this.waiting.push({ write, stored, failed })
     })
   }
@@ -38,7 +41,9 @@ export class GroupCommit {
               this.database.transaction(write)() // nested: a savepoint of its own
               settle.push(stored)
             } catch (error) {
-              settle.push(() => { failed(error); })
+              settle.push(() => {
+                failed(error)
+              })
             }
           }
         })
