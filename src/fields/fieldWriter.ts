@@ -217,13 +217,14 @@ interface Extent {
 }
 
 function range(values: Float64Array): Extent {
-  let least = NaN
-  let greatest = NaN
-  for (const value of values) {
-    if (!(value >= least)) least = Number.isNaN(value) ? least : value
-    if (!(value <= greatest)) greatest = Number.isNaN(value) ? greatest : value
+  let least = Infinity
+  let greatest = -Infinity
+  for (let point = 0; point < values.length; point++) {
+    const value = values[point] // NaN is neither less nor greater
+    if (value < least) least = value
+    if (value > greatest) greatest = value
   }
-  return { least, greatest }
+  return least <= greatest ? { least, greatest } : { least: NaN, greatest: NaN }
 }
 
 async function syncDirectory(path: string): Promise<void> {

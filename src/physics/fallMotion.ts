@@ -57,8 +57,10 @@ export class FallMotion {
     this.square = last
     if (first > this.peakSquare) this.peakSquare = first
     if (last > this.peakSquare) this.peakSquare = last
-    this.firstDuration = (0.75 * h * firstScale) / Math.sqrt(first)
-    this.lastDuration = (0.25 * h * lastScale) / Math.sqrt(last)
-    return this.firstDuration + this.lastDuration
+    const firstSlowness = (0.75 * firstScale) / Math.sqrt(first)
+    const lastSlowness = (0.25 * lastScale) / Math.sqrt(last)
+    this.firstDuration = h * firstSlowness
+    this.lastDuration = h * lastSlowness
+    return h * (firstSlowness + lastSlowness)
   }
 }
