@@ -8,13 +8,24 @@ import {
   type VaryingAir,
 } from '../physics/air.ts'
 import { DRY_AIR_GAS_CONSTANT, STANDARD_GRAVITY } from '../physics/constants.ts'
-import { geometricAltitude, geopotentialHeight } from '../physics/earth.ts'
+import { geometricAltitude, geopotentialHeight, wrapLongitude } from '../physics/earth.ts'
 import { type FieldFile } from './fieldFile.ts'
 import { FieldTiles } from './fieldTiles.ts'
 import { type OutsidePolicy } from './outsideField.ts'
+import { type Grid } from './grid.ts'
 import { LAPSE_BELOW } from './missingLevels.ts'
 import { continueAbove } from './standardContinuation.ts'
 import { HEIGHT, LEVEL_VALUES, TEMPERATURE, VAPOUR, WIND_EAST, WIND_NORTH } from './tiles.ts'
+
+/**
+ * Longest steps, m of altitude, in which a flight takes a field: a balloon drifts over several cells of a
+ * fine grid in a step of a coarse one. Halving either moves a landing by metres (tests/fields/flight.test.ts).
+ */
+const COARSE_STEP = 1500
+const FINE_STEP = 750
+
+/** Grids whose points lie closer together than this, m, are fine. */
+const FINE_GRID = 15_000
 
 /** What a flight took from a field beyond what the field holds. */
 export interface FieldUse {
@@ -46,6 +57,7 @@ export interface FieldLevel {
  * beyond them as beyond a sounding's (ProfileAir).
  */
 export class FieldAir implements VaryingAir {
+  readonly longestStep: number
   readonly file: FieldFile
   private readonly tiles: FieldTiles
   private readonly logPressures: Float64Array
@@ -56,9 +68,8 @@ export class FieldAir implements VaryingAir {
   private readonly topPressure: number
   /** The interval found last: neighbouring calls ask for neighbouring heights. */
   private interval = 0
-  /** The levels under and over the last sample, to be filled again. */
-  private lowerLevel = new Float64Array(LEVEL_VALUES)
-  private upperLevel = new Float64Array(LEVEL_VALUES)
+  /** What is read from the tiles, to be filled again. */
+  private readonly values = new Float64Array(LEVEL_VALUES)
   private lowestAbove = Infinity
   private highestAbove = -Infinity
   private lowestBelow = Infinity
@@ -69,6 +80,7 @@ export class FieldAir implements VaryingAir {
     this.tiles = new FieldTiles(file, outside)
     const { levels, humidity } = file.header
     this.logPressures = Float64Array.from(levels, Math.log)
+    this.longestStep = spacing(file.grid) < FINE_GRID ? FINE_STEP : COARSE_STEP
     this.humidTop = humidity ? levels.indexOf(humidity.levels[humidity.levels.length - 1]) : -1
     this.lastInterval = levels.length - 2
     this.bottomPressure = levels[0]
@@ -81,39 +93,33 @@ export class FieldAir implements VaryingAir {
     tiles.locate(latitude, longitude, time)
     const height = geopotentialHeight(altitude)
     let lower = this.interval
-    let below = this.lowerLevel
-    let above = this.upperLevel
-    tiles.level(lower, below)
-    tiles.level(lower + 1, above)
-    while (height < below[HEIGHT] && lower > 0) {
+    let bottom = tiles.height(lower)
+    let top = tiles.height(lower + 1)
+    while (height < bottom && lower > 0) {
       lower--
-      const spare = above
-      above = below
-      below = spare
-      tiles.level(lower, below)
+      top = bottom
+      bottom = tiles.height(lower)
     }
-    while (height >= above[HEIGHT] && lower < this.lastInterval) {
+    while (height >= top && lower < this.lastInterval) {
       lower++
-      const spare = below
-      below = above
-      above = spare
-      tiles.level(lower + 1, above)
+      bottom = top
+      top = tiles.height(lower + 1)
     }
     this.interval = lower
-    this.lowerLevel = below
-    this.upperLevel = above
 
-    const share = (height - below[HEIGHT]) / (above[HEIGHT] - below[HEIGHT])
-    if (share > 1) this.sampleAbove(above, height, altitude, out)
-    else if (share < 0) this.sampleBelow(below, height, altitude, out)
+    const { values } = this
+    const share = (height - bottom) / (top - bottom)
+    if (share > 1) this.sampleAbove(height, altitude, out)
+    else if (share < 0) this.sampleBelow(height, altitude, out)
     else {
       const { logPressures } = this
-      out.temperature = mix(below, above, TEMPERATURE, share)
-      out.windEast = mix(below, above, WIND_EAST, share)
-      out.windNorth = mix(below, above, WIND_NORTH, share)
+      tiles.between(lower, share, values)
+      out.temperature = values[TEMPERATURE]
+      out.windEast = values[WIND_EAST]
+      out.windNorth = values[WIND_NORTH]
       const low = logPressures[lower]
       out.pressure = Math.exp(low + (logPressures[lower + 1] - low) * share)
-      const vapour = lower < this.humidTop ? mix(below, above, VAPOUR, share) : 0
+      const vapour = lower < this.humidTop ? values[VAPOUR] : 0
       out.density = airDensity(out.temperature, out.pressure, vapour)
     }
     out.viscosity = viscosity(out.temperature)
@@ -144,7 +150,7 @@ export class FieldAir implements VaryingAir {
   column(latitude: number, longitude: number, time: number): FieldLevel[] {
     const { tiles } = this
     tiles.locate(latitude, longitude, time)
-    const values = this.lowerLevel
+    const { values } = this
     return this.file.header.levels.map((pressure, index) => {
       tiles.level(index, values)
       const temperature = values[TEMPERATURE]
@@ -177,7 +183,9 @@ export class FieldAir implements VaryingAir {
     return use
   }
 
-  private sampleAbove(top: Float64Array, height: number, altitude: number, out: AirState): void {
+  private sampleAbove(height: number, altitude: number, out: AirState): void {
+    const { values: top } = this
+    this.tiles.level(this.lastInterval + 1, top)
     continueAbove(top[HEIGHT], top[TEMPERATURE], this.topPressure, height, out)
     out.density = airDensity(out.temperature, out.pressure, 0)
     out.windEast = top[WIND_EAST]
@@ -186,7 +194,9 @@ export class FieldAir implements VaryingAir {
     this.highestAbove = Math.max(this.highestAbove, altitude)
   }
 
-  private sampleBelow(bottom: Float64Array, height: number, altitude: number, out: AirState): void {
+  private sampleBelow(height: number, altitude: number, out: AirState): void {
+    const { values: bottom } = this
+    this.tiles.level(0, bottom)
     const pressure = this.bottomPressure
     const temperature = bottom[TEMPERATURE]
     const vapour = bottom[VAPOUR]
@@ -204,6 +214,11 @@ export class FieldAir implements VaryingAir {
   }
 }
 
-function mix(below: Float64Array, above: Float64Array, slot: number, share: number): number {
-  return below[slot] + (above[slot] - below[slot]) * share
+/** Distance, m, between two neighbouring rows in the middle of a grid, on a sphere. */
+function spacing(grid: Grid): number {
+  const column = Math.floor(grid.columns / 2)
+  const row = Math.floor(grid.rows / 2)
+  const [here, next] = [grid.position(column, row - 1), grid.position(column, row)]
+  const eastward = wrapLongitude(next.longitude - here.longitude) * Math.cos(here.latitude)
+  return 6_371_009 * Math.hypot(next.latitude - here.latitude, eastward) // mean radius, GRS 80
 }

@@ -1,7 +1,7 @@
 import { type FieldFile } from './fieldFile.ts'
 import { type GridPlace } from './grid.ts'
 import { OutsideField, type OutsidePolicy } from './outsideField.ts'
-import { HEIGHT, LEVEL_VALUES, TILE_CELLS, TILE_SIDE } from './tiles.ts'
+import { HEIGHT, LEVEL_VALUES, TEMPERATURE, TILE_CELLS, TILE_SIDE } from './tiles.ts'
 
 /** Tiles kept in memory; one of 26 levels takes 150 kB, and a flight crosses two or three, twice in time. */
 const MOST_TILES = 48
@@ -112,6 +112,54 @@ export class FieldTiles {
         l01 * late[nextColumn + slot] +
         l10 * late[nextRow + slot] +
         l11 * late[opposite + slot]
+    }
+  }
+
+  /**
+   * Fills `out` with the `LEVEL_VALUES` values at a share of the way from a level to the next; the height
+   * is left out.
+   */
+  between(level: number, share: number, out: Float64Array): void {
+    const { early, late, stride } = this
+    const first = this.cell + level * LEVEL_VALUES
+    const nextColumn = first + stride
+    const nextRow = first + this.rowStride
+    const opposite = nextRow + stride
+    const e00 = this.e00 * share
+    const e01 = this.e01 * share
+    const e10 = this.e10 * share
+    const e11 = this.e11 * share
+    const l00 = this.l00 * share
+    const l01 = this.l01 * share
+    const l10 = this.l10 * share
+    const l11 = this.l11 * share
+    const d00 = this.e00 - e00
+    const d01 = this.e01 - e01
+    const d10 = this.e10 - e10
+    const d11 = this.e11 - e11
+    const k00 = this.l00 - l00
+    const k01 = this.l01 - l01
+    const k10 = this.l10 - l10
+    const k11 = this.l11 - l11
+    for (let slot = TEMPERATURE; slot < LEVEL_VALUES; slot++) {
+      const upper = slot + LEVEL_VALUES
+      out[slot] =
+        d00 * early[first + slot] +
+        d01 * early[nextColumn + slot] +
+        d10 * early[nextRow + slot] +
+        d11 * early[opposite + slot] +
+        k00 * late[first + slot] +
+        k01 * late[nextColumn + slot] +
+        k10 * late[nextRow + slot] +
+        k11 * late[opposite + slot] +
+        e00 * early[first + upper] +
+        e01 * early[nextColumn + upper] +
+        e10 * early[nextRow + upper] +
+        e11 * early[opposite + upper] +
+        l00 * late[first + upper] +
+        l01 * late[nextColumn + upper] +
+        l10 * late[nextRow + upper] +
+        l11 * late[opposite + upper]
     }
   }
 

@@ -81,9 +81,6 @@ function routeThroughColumn(column: Column, recorder?: PathRecorder): Route {
   }
 }
 
-/** Longest step, m, through air that varies. Halving it moves a landing by metres (tests/fields/flight.test.ts). */
-const LONGEST_STEP = 1000
-
 function routeAlongPath(
   air: VaryingAir,
   time: number,
@@ -101,15 +98,15 @@ function routeAlongPath(
 }
 
 /**
- * Flies a plan through air that varies along the path, as `fly` does through one column. `longestStep`
- * in m of altitude.
+ * Flies a plan through air that varies along the path, as `fly` does through one column, in steps of at
+ * most `longestStep` m of altitude.
  * @throws NotFlyable with the number that stands in the way; and what the air throws where it ends.
  */
 export function flyAlongPath(
   plan: FlightPlan,
   air: VaryingAir,
   recorder?: PathRecorder,
-  longestStep = LONGEST_STEP,
+  longestStep = air.longestStep,
 ): Flight {
   return flyRoute(plan, routeAlongPath(air, plan.launch.time, longestStep, recorder))
 }

@@ -33,28 +33,44 @@ export function descendAlongPath(
   const fall = new FallMotion(load)
   recorder?.record(at, 0, 'descent')
 
-  // √q starts from nothing, so the fall's beginning is stepped in σ = √s, in which the time is smooth.
+  // √q starts from nothing, so the fall's beginning is stepped in σ = √s, in which the time is smooth. It
+  // is short: the air of its two ends is enough, ln ρ and wind linear between them.
   const apex = at.altitude
-  const settled = Math.max(landingAltitude, apex - OPENING_HEIGHT)
-  const sigmaStep = Math.sqrt(apex - settled) / OPENING_STEPS
-  let duration = sigmaStep * Math.sqrt(2 / gravity(apex)) // of a fall without air
+  const lowest = Math.max(apex - OPENING_HEIGHT, air.breakBelow(apex - OPENING_HEIGHT / 3))
+  const settled = Math.max(landingAltitude, lowest)
+  const height = apex - settled
+  const freeFall = Math.sqrt((2 * height) / gravity(apex))
+  path.sampleAhead(
+    settled,
+    freeFall,
+    endAir.windEast * freeFall,
+    endAir.windNorth * freeFall,
+    thirdAir,
+  )
+  const densityGrowth = Math.log(thirdAir.density / endAir.density)
+  const density = (altitude: number) =>
+    endAir.density * Math.exp((densityGrowth * (apex - altitude)) / height)
+  const sigmaStep = Math.sqrt(height) / OPENING_STEPS
   for (let step = 1; step <= OPENING_STEPS; step++) {
     const to = step === OPENING_STEPS ? settled : apex - (step * sigmaStep) ** 2
     const third = (step - 2 / 3) * sigmaStep
     const thirdAltitude = apex - third * third
-    sampleOpening(path, thirdAltitude, to, duration)
-    duration = fall.radau(
+    const duration = fall.radau(
       sigmaStep,
       2 * third, // ds = 2σ·dσ
       gravity(thirdAltitude),
-      thirdAir.density,
+      density(thirdAltitude),
       2 * step * sigmaStep,
       gravity(to),
-      endAir.density,
+      density(to),
     )
-    moveTo(path, to, fall)
+    const share = (apex - (at.altitude + to) / 2) / height
+    const east = endAir.windEast + (thirdAir.windEast - endAir.windEast) * share
+    const north = endAir.windNorth + (thirdAir.windNorth - endAir.windNorth) * share
+    path.move(to, duration, east * duration, north * duration)
     recorder?.record(at, -fall.speed, to > landingAltitude ? 'descent' : 'landing')
   }
+  path.sampleHere(endAir)
 
   while (at.altitude > landingAltitude) {
     const from = at.altitude
@@ -100,19 +116,6 @@ function sampleStages(
     height * (2 * thirdAir.windNorth * thirdSlowness - windNorth * slowness),
     endAir,
   )
-}
-
-/** Samples both stages of a step in σ, which takes about as long as the one before, `duration` s. */
-function sampleOpening(path: PathSampler, third: number, to: number, duration: number): void {
-  const { windEast, windNorth } = endAir
-  path.sampleAhead(
-    third,
-    duration / 3,
-    (windEast * duration) / 3,
-    (windNorth * duration) / 3,
-    thirdAir,
-  )
-  path.sampleAhead(to, duration, windEast * duration, windNorth * duration, endAir)
 }
 
 /** Drifts with the wind of each stage for the time that stage stands for. */
