@@ -7,7 +7,7 @@ import { NotFlyable } from '../../src/physics/notFlyable.ts'
 import { ProfileAir } from '../../src/physics/profileAir.ts'
 import { TrackRecorder } from '../../src/physics/track.ts'
 import { geodesicLine } from '../../src/planning/geodesic.ts'
-import { standardFlight } from '../physics/plans.ts'
+import { DEGREE, standardFlight } from '../physics/plans.ts'
 import { fixtureBytes } from './fixture.ts'
 import { referenceFieldFlight } from './referenceFieldFlight.ts'
 import { fieldFolder } from './storedField.ts'
@@ -93,6 +93,56 @@ describe.each(CASES)('a flight %s', (_name, plan) => {
       }
       expect(geodesicLine(chord, point).distance).toBeLessThan(60)
     }
+  })
+})
+
+describe('a field on a fine grid', async () => {
+  // The region's air on a grid of 4 km, with waves of 1 m/s and 40 km and their like in time put on it.
+  const [columns, rows, step] = [90, 60, 0.04]
+  const grid = latLonSection(columns, rows, 36.4, 262, step)
+  const messages: Buffer[] = []
+  for (const hours of [120, 123]) {
+    const points = Array.from({ length: columns * rows }, (_, point) => {
+      const latitude = 36.4 - step * Math.floor(point / columns)
+      const longitude = 262 + step * (point % columns)
+      return region.column(latitude * DEGREE, longitude * DEGREE, START + (hours - 120) * 3600)
+    })
+    for (let level = 0; level < 26; level += 2) {
+      const wave = (point: number, phase: number) =>
+        Math.sin((point % columns) / 1.6 + level + phase) *
+        Math.cos(Math.floor(point / columns) / 1.9 + phase + hours)
+      const add = (
+        code: readonly [number, number],
+        value: (level: FieldLevel, point: number) => number,
+      ) =>
+        messages.push(
+          syntheticMessage(grid, {
+            code,
+            pressure: points[0][level].pressure,
+            hours,
+            values: points.map((column, point) => value(column[level], point)),
+          }),
+        )
+      add(CODES.geopotentialHeight, ({ geopotentialHeight }) => geopotentialHeight)
+      add(CODES.temperature, ({ temperature }, point) => temperature + 0.3 * wave(point, 3))
+      add(CODES.windEast, ({ windEast }, point) => windEast + wave(point, 1))
+      add(CODES.windNorth, ({ windNorth }, point) => windNorth + wave(point, 2))
+    }
+  }
+  const air = new FieldAir(await fields.store(Buffer.concat(messages), 'fine'), 'refuse')
+
+  it.each([
+    [35.18, -97.44],
+    [35.4, -97.2],
+    [34.9, -97.3],
+  ])('is flown in steps that see it, from %d, %d', (latitude, longitude) => {
+    const plan = planAt(latitude, longitude)
+    expect(air.longestStep).toBeLessThan(region.longestStep)
+    const whole = flyAlongPath(plan, air)
+    const half = flyAlongPath(plan, air, undefined, air.longestStep / 2)
+    expect(geodesicLine(whole.landing, half.landing).distance).toBeLessThan(10)
+    const exact = referenceFieldFlight(plan, air)
+    expect(geodesicLine(whole.landing, exact.landing).distance).toBeLessThan(10)
   })
 })
 
