@@ -64,4 +64,21 @@ export default tseslint.config(
   },
   { files: ['**/*.js'], ...tseslint.configs.disableTypeChecked },
   ...roomRules,
+  {
+    files: ['src/web/**'],
+    rules: {
+      '@typescript-eslint/no-restricted-imports': [
+        'error',
+        {
+          patterns: [
+            {
+              regex: `^(\\.\\./)+(${rooms.filter((room) => room !== 'physics').join('|')})/`,
+              allowTypeImports: true,
+              message: 'src/web/ talks to the service through its API; it may import src/physics/.',
+            },
+          ],
+        },
+      ],
+    },
+  },
 )

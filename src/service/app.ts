@@ -12,6 +12,7 @@ import { type App, type Context } from './context.ts'
 import { dispersionWork } from './dispersions.ts'
 import { JobRunner } from './jobRunner.ts'
 import { describeRoute, describeSchemas, openApiInfo } from './openApi.ts'
+import { servePage } from './page.ts'
 import { answerError, faultyRequest, Problem, sendProblem } from './problems.ts'
 import { dispersionRoutes } from './routes/dispersions.ts'
 import { fillRoutes } from './routes/fills.ts'
@@ -113,5 +114,6 @@ export async function buildApp(
     return Promise.resolve()
   })
   healthRoutes(typed, context)
+  await servePage(app)
   return app
 }

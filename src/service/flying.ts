@@ -1,5 +1,5 @@
 import { v7 as uuid } from 'uuid'
-import { packTrack } from '../exchange/trackRow.ts'
+import { packTrack, unpackTrack } from '../exchange/trackRow.ts'
 import { predict } from '../planning/prediction.ts'
 import { type RunRow } from '../store/runs.ts'
 import { profileIdOf, type Airs } from './airs.ts'
@@ -7,6 +7,7 @@ import { toFlightPlan } from './flightPlan.ts'
 import { shiftBetween, trialAnswer } from './runAnswer.ts'
 import { type Plan } from './schemas/plan.ts'
 import { type Run, type Trial } from './schemas/run.ts'
+import { seconds } from './units.ts'
 
 /** A flown plan that is to be stored: the answer and its row. */
 export interface FlownRun {
@@ -18,9 +19,14 @@ export interface FlownRun {
  * Flies a plan without storing anything.
  * @throws NotFlyable, or Problem where its air is not there
  */
-export function flyTrial(plan: Plan, airs: Airs): Trial {
+export function flyTrial(plan: Plan, airs: Airs, withTrack = false): Trial {
   const source = airs.source(plan.air)
-  return trialAnswer(predict(toFlightPlan(plan), source), plan, source, now())
+  const prediction = predict(toFlightPlan(plan), source)
+  const trial = trialAnswer(prediction, plan, source, now())
+  if (!withTrack) return trial
+  // Through the packed form, so that a trial shows the same digits as the run stored from it.
+  const track = unpackTrack(packTrack(prediction.track), seconds(plan.launch.time))
+  return { ...trial, track }
 }
 
 /**

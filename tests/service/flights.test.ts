@@ -95,6 +95,45 @@ test('a trial is the same run and stores nothing', async () => {
   expect(run.landing.distanceM / 1000).toBeCloseTo(58.9, 1)
 })
 
+test('a trial answers with its track where it is asked to, as the stored run has it', async () => {
+  const service = await startService()
+  const trial = await service.http.post('/v1/trials?track=true').send(flightRequest()).expect(200)
+  const { track } = trialSchema.parse(trial.body)
+  const { run } = await postFlight(service)
+  const stored = await service.http.get(`/v1/runs/${run.id}/track`).expect(200)
+  expect(track?.length).toBeGreaterThan(20)
+  expect(track).toEqual((stored.body as { points: unknown }).points)
+  await service.http.post('/v1/trials?track=perhaps').send(flightRequest()).expect(400)
+})
+
+test('the packages of the load and the strength of the line are kept with the plan', async () => {
+  const service = await startService()
+  const payload = {
+    massG: 1500,
+    packages: [
+      { name: 'Ozone sonde', massG: 900, smallestFaceCm2: 180 },
+      { name: 'Camera', massG: 250 },
+    ],
+    lineStrengthN: 150,
+  }
+  const { flight, run } = await postFlight(service, { payload })
+  expect(flight.plan.payload).toEqual(payload)
+  expect(run.plan.payload).toEqual(payload)
+  const changed = await service.http
+    .patch(`/v1/flights/${flight.id}`)
+    .send({ payload: { lineStrengthN: 240 } })
+    .expect(200)
+  expect((changed.body as typeof flight).plan.payload).toEqual({ ...payload, lineStrengthN: 240 })
+  const faulty = { ...payload, packages: [{ name: 'Ozone sonde', massG: -900 }] }
+  const refused = await service.http
+    .post('/v1/flights')
+    .send(flightRequest({ payload: faulty }))
+    .expect(400)
+  expect((refused.body as { errors: { path: string }[] }).errors[0].path).toBe(
+    '/payload/packages/0/massG',
+  )
+})
+
 test('flights are listed newest first in pages, by release time and title', async () => {
   const service = await startService()
   const { http } = service

@@ -1,3 +1,4 @@
+import { z } from 'zod'
 import { type App, type Context } from '../context.ts'
 import { flyTrial } from '../flying.ts'
 import { problemAnswers } from '../schemas/common.ts'
@@ -12,10 +13,13 @@ export function trialRoutes(app: App, { airs }: Context): void {
       schema: {
         tags: ['Trials'],
         summary: 'Predict a flight without storing anything',
+        querystring: z.strictObject({
+          track: z.enum(['true', 'false']).default('false').describe('Answer with the track'),
+        }),
         body: flightRequestSchema,
         response: { 200: trialSchema, ...problemAnswers },
       },
     },
-    (request) => flyTrial(planOf(request.body), airs),
+    (request) => flyTrial(planOf(request.body), airs, request.query.track === 'true'),
   )
 }

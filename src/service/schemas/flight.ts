@@ -88,7 +88,7 @@ export const flightChangeSchema = z
     balloon: z.strictObject(balloonMembers).partial(),
     gas: z.strictObject(gasMembers).partial(),
     neckLiftG: neckLiftSchema,
-    payload: payloadSchema,
+    payload: payloadSchema.partial(),
     parachute: parachuteSchema,
     drag: dragSchema,
     landingAltitudeM: landingAltitudeSchema,

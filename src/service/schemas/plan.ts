@@ -71,12 +71,36 @@ export const gasMembers = {
     .describe('How much warmer the gas is in flight than the air around it'),
 }
 
+const packageSchema = z
+  .strictObject({
+    name: z.string().trim().min(1).max(100),
+    massG: z.number().min(1).max(200_000),
+    smallestFaceCm2: z
+      .number()
+      .min(0.1)
+      .max(1e6)
+      .optional()
+      .describe('Area of its smallest face, cm²'),
+  })
+  .meta({ id: 'Package', description: 'One package of the flight train' })
+
 export const payloadSchema = z.strictObject({
   massG: z
     .number()
     .min(1)
     .max(200_000)
     .describe('Everything hung below the neck: instruments, line, parachute'),
+  packages: z
+    .array(packageSchema)
+    .max(50)
+    .optional()
+    .describe('The single packages on the line, for the class of the balloon'),
+  lineStrengthN: z
+    .number()
+    .min(1)
+    .max(1e6)
+    .optional()
+    .describe('Force at which the suspension parts, newtons'),
 })
 
 export const neckLiftSchema = z

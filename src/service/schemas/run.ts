@@ -83,12 +83,6 @@ export const runSchema = z
 
 export type Run = z.output<typeof runSchema>
 
-export const trialSchema = runSchema
-  .extend({ id: z.null(), flightId: z.null() })
-  .meta({ id: 'Trial', description: 'A prediction that was not stored' })
-
-export type Trial = z.output<typeof trialSchema>
-
 export const trackRowSchema = z.object({
   elapsedS: number,
   time: timeSchema,
@@ -101,13 +95,20 @@ export const trackRowSchema = z.object({
   phase: z.enum(['ascent', 'burst', 'descent', 'landing']),
 })
 
+const trackRowsSchema = z
+  .array(trackRowSchema)
+  .describe('So dense that a straight line between points is never more than 50 m off')
+
+export const trialSchema = runSchema
+  .extend({ id: z.null(), flightId: z.null(), track: trackRowsSchema.optional() })
+  .meta({ id: 'Trial', description: 'A prediction that was not stored; its track where asked for' })
+
+export type Trial = z.output<typeof trialSchema>
+
 export const trackSchema = z
   .object({
     runId: idSchema,
     cautions: z.array(cautionSchema),
-    points: z.array(trackRowSchema),
+    points: trackRowsSchema,
   })
-  .meta({
-    id: 'Track',
-    description: 'Points so dense that a straight line between them is never more than 50 m off',
-  })
+  .meta({ id: 'Track', description: 'The track of a run' })
