@@ -26,21 +26,21 @@ const BYTES = 4 * FIELDS
 /** Packs a track for storage: eight little-endian 32-bit integers a point. */
 export function packTrack(points: readonly TrackPoint[]): Buffer {
   const packed = Buffer.alloc(points.length * BYTES)
+  const view = new DataView(packed.buffer, packed.byteOffset, packed.length)
   let offset = 0
-  const write = (value: number) => {
-    offset = packed.writeInt32LE(Math.round(value), offset)
-  }
   for (const point of points) {
     const { windEast, windNorth } = point
     const from = (Math.atan2(-windEast, -windNorth) / DEGREE + 360) % 360
-    write(point.elapsed * 1e3)
-    write((point.latitude / DEGREE) * 1e7)
-    write((point.longitude / DEGREE) * 1e7)
-    write(point.altitude * 1e3)
-    write(point.verticalSpeed * 1e3)
-    write(Math.round(from * 100) % 36_000)
-    write(Math.hypot(windEast, windNorth) * 1e3)
-    write(PHASES.indexOf(point.phase))
+    const speed = Math.sqrt(windEast * windEast + windNorth * windNorth)
+    view.setInt32(offset, Math.round(point.elapsed * 1e3), true)
+    view.setInt32(offset + 4, Math.round((point.latitude / DEGREE) * 1e7), true)
+    view.setInt32(offset + 8, Math.round((point.longitude / DEGREE) * 1e7), true)
+    view.setInt32(offset + 12, Math.round(point.altitude * 1e3), true)
+    view.setInt32(offset + 16, Math.round(point.verticalSpeed * 1e3), true)
+    view.setInt32(offset + 20, Math.round(from * 100) % 36_000, true)
+    view.setInt32(offset + 24, Math.round(speed * 1e3), true)
+    view.setInt32(offset + 28, PHASES.indexOf(point.phase), true)
+    offset += BYTES
   }
   return packed
 }

@@ -159,7 +159,7 @@ class Rise {
 
   /** Steady rate of ascent here, m/s. */
   rateHere(): number {
-    this.column.air.sampleAltitude(this.at.altitude, pointAir)
+    this.column.at(this.at.altitude, pointAir)
     this.rate = riseRate(this.balloon, pointAir, this.at.altitude)
     return this.rate
   }

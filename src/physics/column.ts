@@ -39,6 +39,8 @@ export class Column {
   readonly edgePressure: Float64Array
   readonly edgeDensity: Float64Array
   readonly edgeGravity: Float64Array
+  readonly edgeWindEast: Float64Array
+  readonly edgeWindNorth: Float64Array
   /** A third of the way down from each slab's top, where the descent looks: count values. */
   readonly thirdDensity: Float64Array
   readonly thirdGravity: Float64Array
@@ -64,6 +66,8 @@ export class Column {
     this.edgePressure = new Float64Array(count + 1)
     this.edgeDensity = new Float64Array(count + 1)
     this.edgeGravity = new Float64Array(count + 1)
+    this.edgeWindEast = new Float64Array(count + 1)
+    this.edgeWindNorth = new Float64Array(count + 1)
     this.thirdDensity = new Float64Array(count)
     this.thirdGravity = new Float64Array(count)
     this.windEast = new Float64Array(count)
@@ -86,6 +90,8 @@ export class Column {
       this.edgePressure[edge] = state.pressure
       this.edgeDensity[edge] = state.density
       this.edgeGravity[edge] = gravity(this.altitude(edge))
+      this.edgeWindEast[edge] = state.windEast
+      this.edgeWindNorth[edge] = state.windNorth
     }
     for (let slab = 0; slab < count; slab++) {
       const third = this.altitude(slab + 1) - thickness / 3
@@ -120,6 +126,21 @@ export class Column {
   /** The slab below an altitude in m: the one that holds it, but an edge belongs to the slab below. */
   slabBelow(altitude: number): number {
     return Math.ceil((altitude - COLUMN_BASE) / this.thickness) - 1
+  }
+
+  /** Fills `out` with the air at an altitude, m; an edge's stands in the table. */
+  at(altitude: number, out: AirState): void {
+    const edge = (altitude - COLUMN_BASE) / this.thickness
+    if (!Number.isInteger(edge) || edge < 0 || edge > this.count) {
+      this.air.sampleAltitude(altitude, out)
+      return
+    }
+    out.pressure = this.edgePressure[edge]
+    out.temperature = this.edgeTemperature[edge]
+    out.density = this.edgeDensity[edge]
+    out.viscosity = viscosity(out.temperature)
+    out.windEast = this.edgeWindEast[edge]
+    out.windNorth = this.edgeWindNorth[edge]
   }
 
   /** Fills `out` with the mean air between two altitudes, m; a whole slab's stands in the table. */

@@ -164,7 +164,7 @@ class Fall {
     const from = this.at.altitude
     const third = from - (from - to) / 3
     column.air.sampleAltitude(third, thirdAir)
-    column.air.sampleAltitude(to, pointAir)
+    column.at(to, pointAir)
     const duration = this.radau(
       from - to,
       1,

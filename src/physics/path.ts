@@ -46,9 +46,9 @@ export function recordStep(
   const at = { ...from }
   let told = from.elapsed
   let turned = 0
-  column.air.sampleAltitude(to.altitude, air)
+  column.at(to.altitude, air)
   const { windEast: toEast, windNorth: toNorth } = air
-  column.air.sampleAltitude(from.altitude, air)
+  column.at(from.altitude, air)
   let { windEast, windNorth } = air
   const { breakAltitudes } = column.air
   const upwards = to.altitude > from.altitude
@@ -64,7 +64,7 @@ export function recordStep(
     const start = at.altitude
     const wait = pace * (altitude - start)
     // A velocity that changes steadily by Δ over a time t bends a path from its chord by Δ·t/8.
-    const change = Math.hypot(changeEast, changeNorth)
+    const change = Math.sqrt(changeEast * changeEast + changeNorth * changeNorth)
     const bend = (change * wait) / 8
     const parts = Math.max(1, Math.ceil(Math.sqrt(bend / RECORDED_BEND)))
     for (let part = 1; part <= parts; part++) {

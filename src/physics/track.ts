@@ -20,84 +20,118 @@ export interface TrackPoint extends Whereabouts {
   phase: Phase
 }
 
-interface RecordedPoint extends Whereabouts {
-  verticalSpeed: number
-  phase: Phase
-}
+/** Values of a recorded point, in the order in which they are kept. */
+const LATITUDE = 0
+const LONGITUDE = 1
+const ALTITUDE = 2
+const ELAPSED = 3
+const VERTICAL_SPEED = 4
+const VALUES = 5
 
 /** Records a flight's path and keeps as few of its points as tell it to within 50 m at every moment. */
 export class TrackRecorder implements PathRecorder {
-  private readonly points: RecordedPoint[] = []
+  private points = new Float64Array(512 * VALUES)
+  private readonly phases: Phase[] = []
 
   record(at: Whereabouts, verticalSpeed: number, phase: Phase): void {
-    const { latitude, longitude, altitude, elapsed } = at
-    this.points.push({ latitude, longitude, altitude, elapsed, verticalSpeed, phase })
+    const offset = this.phases.length * VALUES
+    if (offset === this.points.length) {
+      const longer = new Float64Array(2 * offset)
+      longer.set(this.points)
+      this.points = longer
+    }
+    const { points } = this
+    points[offset + LATITUDE] = at.latitude
+    points[offset + LONGITUDE] = at.longitude
+    points[offset + ALTITUDE] = at.altitude
+    points[offset + ELAPSED] = at.elapsed
+    points[offset + VERTICAL_SPEED] = verticalSpeed
+    this.phases.push(phase)
   }
 
   /** The track with the wind of the air it was flown in; `releaseTime` in s since 1970 UTC. */
   track(air: Air, releaseTime: number): TrackPoint[] {
+    const { points, phases } = this
     const state = emptyAirState()
-    return this.keptPoints().map((point) => {
-      const { latitude, longitude, altitude, elapsed, verticalSpeed, phase } = point
+    const track: TrackPoint[] = []
+    const kept = this.kept()
+    for (let index = 0; index < phases.length; index++) {
+      if (kept[index] === 0) continue
+      const at = index * VALUES
+      const latitude = points[at + LATITUDE]
+      const longitude = points[at + LONGITUDE]
+      const altitude = points[at + ALTITUDE]
+      const elapsed = points[at + ELAPSED]
       air.sample(latitude, longitude, altitude, releaseTime + elapsed, state)
-      return {
+      track.push({
         latitude,
         longitude: wrapLongitude(longitude),
         altitude,
         elapsed,
-        verticalSpeed,
+        verticalSpeed: points[at + VERTICAL_SPEED],
         windEast: state.windEast,
         windNorth: state.windNorth,
-        phase,
-      }
-    })
+        phase: phases[index],
+      })
+    }
+    return track
   }
 
-  /** Douglas and Peucker, Cartographica 10, 1973, p. 112, with distances taken at equal times. */
-  private keptPoints(): RecordedPoint[] {
-    const { points } = this
-    const kept = new Uint8Array(points.length)
-    const open: [number, number][] = []
+  /**
+   * Which points tell the path: 1 for each that stays. Douglas and Peucker, Cartographica 10, 1973,
+   * p. 112, with distances taken at equal times.
+   */
+  private kept(): Uint8Array {
+    const { phases } = this
+    const kept = new Uint8Array(phases.length)
+    const open: number[] = []
     let start = 0
-    points.forEach((point, index) => {
-      if (index === 0 || point.phase === 'burst' || point.phase === 'landing') {
-        kept[index] = 1
-        if (index > start) open.push([start, index])
-        start = index
-      }
-    })
-    for (let span = open.pop(); span; span = open.pop()) {
-      const [first, last] = span
-      let farthest = TOLERANCE
-      let split = -1
-      for (let index = first + 1; index < last; index++) {
-        const distance = bend(points[first], points[index], points[last])
-        if (distance > farthest) {
-          farthest = distance
-          split = index
-        }
-      }
-      if (split > 0) {
-        kept[split] = 1
-        open.push([first, split], [split, last])
+    for (let index = 0; index < phases.length; index++) {
+      if (index > 0 && phases[index] !== 'burst' && phases[index] !== 'landing') continue
+      kept[index] = 1
+      if (index > start) open.push(start, index)
+      start = index
+    }
+    for (let last = open.pop(); last !== undefined; last = open.pop()) {
+      const first = open.pop() ?? 0
+      const split = this.farthest(first, last)
+      if (split === 0) continue
+      kept[split] = 1
+      open.push(first, split, split, last)
+    }
+    return kept
+  }
+
+  /**
+   * The point between two that is farthest from where the straight line between them is at its time; 0
+   * where none is farther off than the tolerance.
+   */
+  private farthest(first: number, last: number): number {
+    const { points } = this
+    const from = first * VALUES
+    const to = last * VALUES
+    const latitude = points[from + LATITUDE]
+    const longitude = points[from + LONGITUDE]
+    const altitude = points[from + ALTITUDE]
+    const elapsed = points[from + ELAPSED]
+    const perSecond = 1 / (points[to + ELAPSED] - elapsed)
+    const latitudeRate = (points[to + LATITUDE] - latitude) * perSecond
+    const longitudeRate = (points[to + LONGITUDE] - longitude) * perSecond
+    const altitudeRate = (points[to + ALTITUDE] - altitude) * perSecond
+    const eastward = EARTH_RADIUS * Math.cos(latitude)
+    let farthest = TOLERANCE * TOLERANCE
+    let found = 0
+    for (let at = from + VALUES; at < to; at += VALUES) {
+      const wait = points[at + ELAPSED] - elapsed
+      const north = (points[at + LATITUDE] - latitude - latitudeRate * wait) * EARTH_RADIUS
+      const east = (points[at + LONGITUDE] - longitude - longitudeRate * wait) * eastward
+      const up = points[at + ALTITUDE] - altitude - altitudeRate * wait
+      const square = north * north + east * east + up * up
+      if (square > farthest) {
+        farthest = square
+        found = at / VALUES
       }
     }
-    return points.filter((_, index) => kept[index] === 1)
+    return found
   }
-}
-
-/** Distance, m, of `point` from where the straight line from `first` to `last` is at its time. */
-function bend(first: Whereabouts, point: Whereabouts, last: Whereabouts): number {
-  const share = (point.elapsed - first.elapsed) / (last.elapsed - first.elapsed)
-  const north = off(first.latitude, point.latitude, last.latitude, share) * EARTH_RADIUS
-  const east =
-    off(first.longitude, point.longitude, last.longitude, share) *
-    EARTH_RADIUS *
-    Math.cos(first.latitude)
-  const up = off(first.altitude, point.altitude, last.altitude, share)
-  return Math.sqrt(north * north + east * east + up * up)
-}
-
-function off(first: number, value: number, last: number, share: number): number {
-  return value - (first + (last - first) * share)
 }
