@@ -54,11 +54,21 @@ function risingReynolds(
   volume: number,
   gravity: number,
 ): number {
+  const best = bestNumber(balloon, air, volume, gravity)
+  return best > 0 ? balloon.drag.reynolds(best) : 0
+}
+
+/** Cd·Re² of a balloon that rises steadily in this air; negative or nothing where it has no lift. */
+function bestNumber(
+  balloon: AscendingBalloon,
+  air: AirState,
+  volume: number,
+  gravity: number,
+): number {
   const lift = (air.density * volume - balloon.mass) * gravity
-  if (!(lift > 0)) return 0
   // ½·ρ·Cd·(πD²/4)·w² = F with w = Re·μ/(ρD) leaves Cd·Re² = 8·F·ρ/(π·μ²).
   const best = (8 * lift * air.density) / (Math.PI * air.viscosity * air.viscosity)
-  return balloon.drag.reynolds(best / (balloon.dragFactor ?? 1))
+  return best / (balloon.dragFactor ?? 1)
 }
 
 function speed(reynolds: number, air: AirState, volume: number): number {
@@ -104,14 +114,14 @@ export function ascend(
       rise.recordedStep(slab, column.altitude(slab + 1), recorder, 'ascent')
     }
   } else if (slab < burstSlab) {
-    rise.step(slab, column.altitude(slab + 1))
+    rise.through(slab, column.altitude(slab + 1))
     rise.wholeSlabs(slab + 1, burstSlab)
   }
   if (burstSlab === count) throw noBurst(balloon, column)
 
   const burst = burstAltitude(balloon, column, at.altitude, column.altitude(burstSlab + 1))
   if (recorder) rise.recordedStep(burstSlab, burst, recorder, 'burst')
-  else if (burst > at.altitude) rise.step(burstSlab, burst)
+  else if (burst > at.altitude) rise.through(burstSlab, burst)
   end.burstRate = rise.rateHere()
   if (!(end.burstRate > 0)) throw stopsRising(balloon, column, at.altitude)
   end.lowestReynolds = rise.lowestReynolds
@@ -122,6 +132,12 @@ export function ascend(
 let best = new Float64Array(0)
 let reynolds = new Float64Array(0)
 let drifts = { altitude: best, east: best, north: best }
+
+/** How near ln(Cd·Re²) is to its jump where the steps become short: some two slabs on either side. */
+const NEAR_JUMP = 0.1
+/** Parts that a slab near the jump is taken in, and steps on each side of the jump in such a part. */
+const CRISIS_PARTS = 16
+const JUMP_STEPS = 4
 
 /** The state of a rising balloon, stepped up through a column. */
 class Rise {
@@ -164,8 +180,63 @@ class Rise {
     return this.rate
   }
 
-  /** Up to `top` m within one slab, in the mean air of the step; returns the rate of ascent, m/s. */
-  step(slab: number, top: number): number {
+  /** Up to `top` m within one slab: in one step, or in many where the drag crisis is near. */
+  through(slab: number, top: number): void {
+    const bottom = this.at.altitude
+    if (!this.isNearJump(bottom) && !this.isNearJump(top)) {
+      this.step(slab, top)
+      return
+    }
+    for (let part = 1; part <= CRISIS_PARTS; part++) {
+      this.throughCrisis(slab, bottom + ((top - bottom) * part) / CRISIS_PARTS)
+    }
+  }
+
+  /** As `through`, in steps that meet where the Reynolds number jumps. */
+  private throughCrisis(slab: number, top: number): void {
+    const bottom = this.at.altitude
+    const jump = this.jumpIn(bottom, top)
+    if (jump === null) {
+      this.step(slab, top)
+      return
+    }
+    // Next to the jump the rate changes as the root of the distance to it, so the steps grow from it.
+    for (let step = JUMP_STEPS - 1; step >= 0; step--) {
+      this.step(slab, jump - (jump - bottom) * (step / JUMP_STEPS) ** 2)
+    }
+    for (let step = 1; step <= JUMP_STEPS; step++) {
+      this.step(slab, jump + (top - jump) * (step / JUMP_STEPS) ** 2)
+    }
+  }
+
+  private isNearJump(altitude: number): boolean {
+    const { jump } = this.balloon.drag
+    return jump !== null && Math.abs(Math.log(this.bestAt(altitude) / jump)) < NEAR_JUMP
+  }
+
+  /** The altitude in (bottom, top) m at which the Reynolds number jumps; null where it does not. */
+  private jumpIn(bottom: number, top: number): number | null {
+    const { jump } = this.balloon.drag
+    if (jump === null || this.bestAt(bottom) > jump === this.bestAt(top) > jump) return null
+    const rises = this.bestAt(top) > jump
+    let [low, high] = [bottom, top]
+    while (high - low > 1e-3) {
+      const middle = (low + high) / 2
+      if (this.bestAt(middle) > jump === rises) high = middle
+      else low = middle
+    }
+    return low
+  }
+
+  private bestAt(altitude: number): number {
+    const { balloon, column } = this
+    column.at(altitude, pointAir)
+    const volume = gasVolume(balloon, pointAir.temperature, pointAir.pressure)
+    return bestNumber(balloon, pointAir, volume, gravity(altitude))
+  }
+
+  /** Up to `top` m within one slab, in the mean air of the step. */
+  private step(slab: number, top: number): void {
     const { balloon, column, at, departure } = this
     const bottom = at.altitude
     const middle = (bottom + top) / 2
@@ -182,21 +253,24 @@ class Rise {
     drift(at, middle, east * duration, north * duration)
     at.elapsed += duration
     at.altitude = top
-    return rate
   }
 
-  /** As `step`, telling a recorder of the way; the step ends in `phase`. */
+  /** As `through`, telling a recorder of the way; the step ends in `phase`. */
   recordedStep(slab: number, top: number, recorder: PathRecorder, phase: Phase): void {
     const { at, column } = this
     const from = { ...at }
     const fromRate = this.rate
-    this.step(slab, top)
+    this.through(slab, top)
     recordStep(recorder, column, from, fromRate, at, this.rateHere(), phase)
   }
 
-  /** Through slabs [first, end), all of each: the same as a step through each, from the tables. */
+  /** Through slabs [first, end), all of each: the same as `through` each, from the tables where it can. */
   wholeSlabs(first: number, end: number): void {
     const { balloon, column, at, departure } = this
+    if (balloon.drag.jump !== null) {
+      for (let slab = first; slab < end; slab++) this.through(slab, column.altitude(slab + 1))
+      return
+    }
     const { fill, mass, dragFactor = 1 } = balloon
     const { displacedPerMole, bestPerLift, slowness } = column.rise(balloon.temperatureOffset)
     const { windEast, windNorth } = column

@@ -12,6 +12,8 @@ export interface DragCurve {
   reynoldsOfAll(best: Float64Array, reynolds: Float64Array, first: number, end: number): void
   /** Reynolds numbers that the curve was fitted to. */
   readonly fitted: { from: number; to: number }
+  /** The Best number at which `reynolds` jumps; null for a curve without a drag crisis. */
+  readonly jump: number | null
 }
 
 export type DragChoice =
@@ -33,6 +35,7 @@ export function dragCurve(choice: DragChoice): DragCurve {
 
 class ConstantDrag implements DragCurve {
   readonly fitted = { from: 0, to: Infinity }
+  readonly jump = null
   private readonly value: number
 
   constructor(value: number) {
@@ -59,6 +62,7 @@ class ConstantDrag implements DragCurve {
  */
 class SoundingBalloonDrag implements DragCurve {
   readonly fitted = { from: 4e4, to: 1.5e6 }
+  readonly jump = null
   private readonly low = Math.log(this.fitted.from)
   private readonly high = Math.log(this.fitted.to)
   private readonly lowRoot = Math.exp(logBest(this.low) / 2)
@@ -129,17 +133,22 @@ function logBestSlope(x: number): number {
  */
 class SmoothSphereDrag implements DragCurve {
   readonly fitted = { from: 0, to: 1e6 }
-  /** Grid of ln Re, and the highest ln(Cd·Re²) met up to each: its crossings are the slowest speeds. */
-  private readonly grid = Float64Array.from({ length: 1601 }, (_, i) => -12 + i * 0.025)
-  private readonly envelope = new Float64Array(this.grid.length)
+  readonly jump: number
+  /** ln Re where Cd·Re² stops rising as the crisis begins, and where it is regained after it. */
+  private readonly crisis: number
+  private readonly regained: number
   private table: InverseTable | undefined
 
   constructor() {
-    let highest = -Infinity
-    this.grid.forEach((x, i) => {
-      highest = Math.max(highest, this.logBest(x))
-      this.envelope[i] = highest
-    })
+    const from = Math.log(1e5) // Cd·Re² rises up to here, falls soon after, and rises from Re = 1e6 on
+    let peak = from
+    while (this.logBest(peak + 1e-3) > this.logBest(peak)) peak += 1e-3
+    this.crisis = highest((x) => this.logBest(x), peak - 1e-3, peak + 1e-3)
+    const logJump = this.logBest(this.crisis)
+    this.jump = Math.exp(logJump)
+    let valley = this.crisis + 1e-3
+    while (this.logBest(valley + 1e-3) < this.logBest(valley)) valley += 1e-3
+    this.regained = this.bisect(logJump, valley, Math.log(1e7))
   }
 
   coefficient(reynolds: number): number {
@@ -169,17 +178,15 @@ class SmoothSphereDrag implements DragCurve {
     for (let i = first; i < end; i++) reynolds[i] = this.reynolds(best[i])
   }
 
-  /** The lowest ln Re with ln(Cd·Re²) = `target`, by bisection. */
+  /** The lowest ln Re with ln(Cd·Re²) = `target`. */
   private search(target: number): number {
-    let low = 0
-    let high = this.grid.length - 1
-    while (high - low > 1) {
-      const middle = (low + high) >> 1
-      if (this.envelope[middle] < target) low = middle
-      else high = middle
-    }
-    let left = this.grid[low]
-    let right = this.grid[high]
+    return target > Math.log(this.jump)
+      ? this.bisect(target, this.regained, SEARCH_TO)
+      : this.bisect(target, SEARCH_FROM, this.crisis)
+  }
+
+  /** ln Re in [left, right], in which Cd·Re² rises, where its logarithm is `target`. */
+  private bisect(target: number, left: number, right: number): number {
     while (right - left > 1e-10) {
       const middle = (left + right) / 2
       if (this.logBest(middle) < target) left = middle
@@ -191,6 +198,20 @@ class SmoothSphereDrag implements DragCurve {
   private logBest(x: number): number {
     return 2 * x + Math.log(this.coefficient(Math.exp(x)))
   }
+}
+
+/** Where ln Re is looked for. */
+const SEARCH_FROM = -12
+const SEARCH_TO = 28
+
+/** Where in [left, right] a function of one peak is highest, to 1e-9: ternary search. */
+function highest(value: (x: number) => number, left: number, right: number): number {
+  while (right - left > 1e-9) {
+    const third = (right - left) / 3
+    if (value(left + third) < value(right - third)) left += third
+    else right -= third
+  }
+  return (left + right) / 2
 }
 
 /** Where the table of ln Re begins in ln(Cd·Re²), its steps and its cells: Re from 1e3 to 1e8. */

@@ -11,7 +11,7 @@ import { dragArea, type Parachute } from './parachute.ts'
 import { type PathRecorder, type Whereabouts } from './path.ts'
 
 /** Changes whenever the same plan in the same air would give another answer; stored with every run. */
-export const MODEL_VERSION = '1.0'
+export const MODEL_VERSION = '1.1'
 
 /** Everything about a flight but the air. SI; angles in radians. */
 export interface FlightPlan {

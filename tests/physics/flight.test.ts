@@ -40,6 +40,7 @@ const CASES: [string, FlightPlan, ColumnAir][] = [
     { ...normanPlan, drag: { curve: 'constant', coefficient: 0.3 } },
     norman,
   ],
+  ['with a smooth sphere', { ...normanPlan, drag: { curve: 'smooth-sphere' } }, norman],
   [
     'over a mountain, landing high',
     { ...normanPlan, launch: { ...normanPlan.launch, altitude: 1234 }, landingAltitude: 3210 },
@@ -63,6 +64,16 @@ describe.each(CASES)('a flight %s', (_name, plan, air) => {
     expect(geodesicLine(whole.landing, half.landing).distance).toBeLessThan(10)
     expect(Math.abs(whole.landing.elapsed - half.landing.elapsed)).toBeLessThan(1)
   })
+})
+
+test('the drag crisis of a smooth sphere sets in at one height, whatever the slabs', () => {
+  // Halved slabs once moved such landings by up to 225 m.
+  for (let neckLift = 1.7; neckLift < 8; neckLift += 0.05) {
+    const plan: FlightPlan = { ...normanPlan, neckLift, drag: { curve: 'smooth-sphere' } }
+    const [whole, half] = [400, 200].map((thickness) => fly(plan, new Column(norman, thickness)))
+    expect(geodesicLine(whole.landing, half.landing).distance).toBeLessThan(10)
+    expect(Math.abs(whole.landing.elapsed - half.landing.elapsed)).toBeLessThan(1)
+  }
 })
 
 test('the burst is where the gas fills the rated volume, to a millimetre', () => {
