@@ -1,15 +1,19 @@
+import type { GeoJSON, MultiPolygon } from 'geojson'
 import { AttributionControl, type GeoJSONSource, Map as MapView, setWorkerUrl } from 'maplibre-gl'
 import 'maplibre-gl/dist/maplibre-gl.css'
 import workerUrl from 'maplibre-gl/dist/maplibre-gl-worker.mjs?url'
 import { cursorElapsed } from '../cursor.ts'
 import { momentKeys } from '../pictures/momentKeys.ts'
+import { type PicturesProps } from '../pictures/pictures.tsx'
+import { AreaPen } from './areaPen.ts'
 import { Coasts } from './coasts.ts'
-import { type FlightMapProps } from './flightMap.tsx'
 import { frameFor, type MapFrame, type MapPlace } from './frame.ts'
 import { Furniture } from './furniture.ts'
+import { Labels } from './labels.ts'
 import { mapStyle } from './mapStyle.ts'
 import { nearestMoment } from './nearestMoment.ts'
 import { PlaceMarkers } from './placeMarkers.ts'
+import { areaShapes, landingPoints, landingRegions, NOTHING, topOf } from './shapes.ts'
 import { trackLines, trackPlaces } from './trackLines.ts'
 
 setWorkerUrl(workerUrl)
@@ -26,20 +30,22 @@ export class FlightChart {
   private readonly coasts: Coasts
   private readonly furniture: Furniture
   private readonly markers: PlaceMarkers
+  private readonly labels: Labels
+  readonly pen: AreaPen
   private readonly undo: (() => void)[] = []
-  private props: FlightMapProps
+  private props: PicturesProps
   private frame: MapFrame
   private places: MapPlace[][]
   private ready = false
 
-  constructor(box: HTMLElement, props: FlightMapProps) {
+  constructor(box: HTMLElement, props: PicturesProps) {
     this.props = props
     this.frame = frameOf(props)
     this.places = placesOf(props, this.frame)
     const view = new MapView({
       container: box,
       style: mapStyle(box),
-      bounds: boundsOf(this.places),
+      bounds: this.bounds(),
       fitBoundsOptions: { padding: MARGIN, maxZoom: 13 },
       attributionControl: false,
       pitchWithRotate: false,
@@ -55,6 +61,12 @@ export class FlightChart {
     this.coasts = new Coasts(view)
     this.furniture = new Furniture(view)
     this.markers = new PlaceMarkers(view)
+    this.labels = new Labels(view)
+    this.pen = new AreaPen(
+      view,
+      () => this.frame,
+      (polygon) => this.props.onAreaDrawn?.(polygon),
+    )
     view.once('style.load', () => {
       this.ready = true
       this.draw()
@@ -74,8 +86,8 @@ export class FlightChart {
   }
 
   /** Draws other runs, or the same ones flown anew. */
-  show(props: FlightMapProps): void {
-    const before = { keys: keysOf(this.props), frame: this.frame.key }
+  show(props: PicturesProps): void {
+    const before = { keys: keysOf(this.props), cloud: this.props.cloud, frame: this.frame.key }
     this.props = props
     const frame = frameOf(props)
     if (frame.key !== before.frame) this.frame = frame
@@ -83,13 +95,17 @@ export class FlightChart {
     this.markers.place(props.runs, this.places)
     if (!this.ready) return
     this.draw()
-    if (keysOf(props) !== before.keys || frame.key !== before.frame || !this.inView()) this.fit()
+    const changed =
+      keysOf(props) !== before.keys ||
+      frame.key !== before.frame ||
+      (props.cloud && props.cloud !== before.cloud)
+    if (changed || !this.inView()) this.fit()
   }
 
   /** Moves the view to the whole flight. */
   fit(): void {
     const options = { padding: MARGIN, maxZoom: 13, animate: false }
-    this.view.fitBounds(boundsOf(this.places), options)
+    this.view.fitBounds(this.bounds(), options)
   }
 
   zoom(steps: number): void {
@@ -122,10 +138,44 @@ export class FlightChart {
   }
 
   private draw(): void {
-    const { runs } = this.props
-    const box = this.view.getContainer()
-    void this.view.getSource<GeoJSONSource>('tracks')?.setData(trackLines(runs, this.frame, box))
+    this.put('tracks', trackLines(this.props.runs, this.frame, this.view.getContainer()))
+    this.drawShapes()
     this.drawFurniture()
+  }
+
+  private drawShapes(): void {
+    const { cloud, areas = [] } = this.props
+    const regions = cloud ? landingRegions(cloud, this.frame) : NOTHING
+    const places = areaShapes(areas, this.frame)
+    this.put('regions', regions)
+    this.put('landing-points', cloud ? landingPoints(cloud, this.frame) : NOTHING)
+    this.put('areas', places)
+    this.labels.show([
+      ...regions.features.flatMap(({ geometry, properties }) =>
+        labelled(geometry, `${Math.round(100 * Number(properties?.share))} %`, 'share'),
+      ),
+      ...places.features.flatMap(({ geometry, properties }) =>
+        labelled(
+          geometry,
+          `${String(properties?.name)} (${properties?.wanted ? 'wanted' : 'avoid'})`,
+          'area',
+        ),
+      ),
+    ])
+  }
+
+  private put(source: string, data: GeoJSON): void {
+    void this.view.getSource<GeoJSONSource>(source)?.setData(data)
+  }
+
+  /** What the whole flight takes, its landing regions included. */
+  private bounds(): [number, number, number, number] {
+    const { cloud } = this.props
+    const regions = cloud ? landingRegions(cloud, this.frame).features : []
+    return boundsOf([
+      ...this.places,
+      ...regions.flatMap(({ geometry }) => geometry.coordinates.flat() as MapPlace[][]),
+    ])
   }
 
   private inView(): boolean {
@@ -143,7 +193,10 @@ export class FlightChart {
     }
     this.view.on('mousemove', point)
     this.view.on('touchstart', point)
-    this.view.on('click', point)
+    this.view.on('click', (event) => {
+      if (this.pen.drawing) this.pen.click([event.lngLat.lng, event.lngLat.lat])
+      else point(event)
+    })
     this.view.on('mouseout', () => (cursorElapsed.value = null))
   }
 
@@ -156,16 +209,31 @@ export class FlightChart {
         () => this.frame,
       ),
     )
-    canvas.addEventListener('keydown', (event) => {
-      const pan = event.shiftKey ? PANS[event.key] : undefined
-      if (pan) this.view.panBy(pan, { duration: 0 })
+    const box = this.view.getContainer()
+    const onKey = (event: KeyboardEvent) => {
+      if (event.target !== canvas) return
+      // While an area is drawn, the arrows alone move the map under its middle.
+      const pan = event.shiftKey || this.pen.drawing ? PANS[event.key] : undefined
+      if (this.pen.key(event.key)) event.preventDefault()
+      else if (pan) this.view.panBy(pan, { duration: 0 })
       else if (event.key === '+' || event.key === '=') this.zoom(1)
       else if (event.key === '-') this.zoom(-1)
       else if (event.key === '0') this.fit()
       else return
       event.preventDefault()
+      event.stopPropagation()
+    }
+    // Before the canvas's own keys, which move the moment.
+    box.addEventListener('keydown', onKey, { capture: true })
+    this.undo.push(() => {
+      box.removeEventListener('keydown', onKey, { capture: true })
     })
   }
+}
+
+function labelled(shape: MultiPolygon, text: string, kind: string) {
+  const place = topOf(shape)
+  return place ? [{ text, place, kind }] : []
 }
 
 /** Shift and an arrow move the map by so many CSS pixels. */
@@ -180,15 +248,15 @@ function calm(): boolean {
   return matchMedia('(prefers-reduced-motion: reduce)').matches
 }
 
-function keysOf({ runs }: FlightMapProps): string {
+function keysOf({ runs }: PicturesProps): string {
   return runs.map(({ key }) => key).join(' ')
 }
 
-function frameOf({ runs }: FlightMapProps): MapFrame {
+function frameOf({ runs }: PicturesProps): MapFrame {
   return frameFor(runs.flatMap(({ track }) => track))
 }
 
-function placesOf({ runs }: FlightMapProps, frame: MapFrame): MapPlace[][] {
+function placesOf({ runs }: PicturesProps, frame: MapFrame): MapPlace[][] {
   return runs.map(({ track }) => trackPlaces(track, frame))
 }
 

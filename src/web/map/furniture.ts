@@ -45,8 +45,12 @@ export class Furniture {
     this.labels.replaceChildren(
       ...this.lines.flatMap((line) => {
         const meridian = line.kind === 'meridian'
-        const at = this.crossing(line.points, meridian, meridian ? INSET : INSET)
-        if (at === null || at < 12 || at > (meridian ? clientWidth - 40 : clientHeight - 34)) {
+        const at = this.crossing(line.points, meridian, INSET)
+        if (
+          at === null ||
+          at < (meridian ? 52 : 30) ||
+          at > (meridian ? clientWidth - 40 : clientHeight - 34)
+        ) {
           return []
         }
         const label = document.createElement('span')

@@ -1,5 +1,6 @@
 import type { GeoJSONSourceSpecification, StyleSpecification } from 'maplibre-gl'
 import { ink } from '../pictures/ink.ts'
+import { shapeLayers } from './shapeLayers.ts'
 
 const nothing: GeoJSONSourceSpecification = {
   type: 'geojson',
@@ -17,6 +18,10 @@ export function mapStyle(within: Element): StyleSpecification {
       borders: nothing,
       graticule: nothing,
       tracks: nothing,
+      areas: nothing,
+      regions: nothing,
+      'landing-points': nothing,
+      drawn: nothing,
     },
     layers: [
       { id: 'water', type: 'background', paint: { 'background-color': colour('--map-water') } },
@@ -43,6 +48,7 @@ export function mapStyle(within: Element): StyleSpecification {
         source: 'graticule',
         paint: { 'line-color': colour('--map-graticule'), 'line-width': 0.7 },
       },
+      ...shapeLayers(colour),
       {
         id: 'track-edge',
         type: 'line',

@@ -1,4 +1,4 @@
-import { effect } from '@preact/signals'
+import { effect, signal } from '@preact/signals'
 import { type Map as MapView, Marker } from 'maplibre-gl'
 import { cursorElapsed } from '../cursor.ts'
 import { runToken } from '../pictures/ink.ts'
@@ -12,6 +12,8 @@ export class PlaceMarkers {
   private readonly view: MapView
   private readonly moment: Marker
   private markers: Marker[] = []
+  /** Counts what was placed, so that the moment's marker follows a flight that changes under it */
+  private readonly placed = signal(0)
 
   constructor(view: MapView) {
     this.view = view
@@ -33,12 +35,14 @@ export class PlaceMarkers {
         this.mark('landing', index, last, runs.length > 1 ? String(index + 1) : ''),
       ]
     })
+    this.placed.value += 1
   }
 
   /** Keeps the marker of the moment where the balloon is then. Returns what stops it. */
   followMoment(track: () => readonly TrackRow[], frame: () => MapFrame): () => void {
     return effect(() => {
       const elapsed = cursorElapsed.value
+      void this.placed.value
       if (elapsed === null) {
         this.moment.remove()
         return

@@ -74,6 +74,7 @@ function runSeries(index: number): uPlot.Series[] {
     stroke: ink(runToken(index, phase)),
     width: index === 0 ? 2.5 : 1.5,
     spanGaps: true,
+    pxAlign: 0,
     points: { show: false },
     ...(phase === 'descent' ? { dash: [7, 5] } : {}),
   }))

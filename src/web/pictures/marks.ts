@@ -22,6 +22,7 @@ export function drawMark(
   canvas.save()
   canvas.translate(x, y)
   canvas.scale(scale, scale)
+  canvas.setLineDash([])
   canvas.lineJoin = 'round'
   canvas.strokeStyle = paper
   canvas.lineWidth = 4.5

@@ -1,7 +1,10 @@
+import type { Polygon } from 'geojson'
 import { lazy, Suspense } from 'preact/compat'
+import { type DispersionAnswer } from '../../service/schemas/dispersion.ts'
 import { HeightPicture } from './heightPicture.tsx'
 import { Legend } from './legend.tsx'
 import { Readout } from './readout.tsx'
+import { type ShownArea } from './shownArea.ts'
 import { type ShownRun } from './shownRun.ts'
 import { WindPicture } from './windPicture.tsx'
 import './pictures.css'
@@ -11,10 +14,17 @@ const FlightMap = lazy(() => import('../map/flightMap.tsx').then((room) => room.
 export interface PicturesProps {
   /** The first is the one that is read at the cursor; at least one */
   runs: ShownRun[]
+  /** Where the members of a dispersion land */
+  cloud?: DispersionAnswer | null
+  /** Places to avoid and places wanted */
+  areas?: ShownArea[]
+  /** Offers the drawing of an area, and takes the drawn one: longitudes may run on past 180° */
+  onAreaDrawn?: (polygon: Polygon) => void
 }
 
 /** Track, height and wind of one run or several, linked by the moment that one points at. */
-export function Pictures({ runs }: PicturesProps) {
+export function Pictures(props: PicturesProps) {
+  const { runs } = props
   const heights = heightsOf(runs)
   return (
     <section class="pictures" aria-label="Pictures of the flight">
@@ -23,7 +33,7 @@ export function Pictures({ runs }: PicturesProps) {
         <figure class="of-map">
           <figcaption>Ground track</figcaption>
           <Suspense fallback={<p class="waiting">Opening the map …</p>}>
-            <FlightMap runs={runs} />
+            <FlightMap {...props} />
           </Suspense>
         </figure>
         <figure class="of-height">

@@ -20,8 +20,10 @@ export function drawHeld(plot: uPlot, held: readonly HeldSpan[], one: number): v
     canvas.beginPath()
     canvas.rect(bbox.left, top, bbox.width, height)
     canvas.clip()
-    canvas.strokeStyle = ink('--rule', plot.root)
-    canvas.lineWidth = 1.5 * scale
+    canvas.setLineDash([])
+    canvas.strokeStyle = ink('--quiet', plot.root)
+    canvas.globalAlpha = 0.5
+    canvas.lineWidth = scale
     canvas.beginPath()
     for (let x = bbox.left - height; x < bbox.left + bbox.width; x += HATCH_EVERY * scale) {
       canvas.moveTo(x, bottom)
@@ -56,6 +58,7 @@ export function drawArrows(plot: uPlot, { winds }: WindColumn, one: number): voi
   const scale = devicePixelRatio
   const x = bbox.left + bbox.width + 22 * scale
   canvas.save()
+  canvas.setLineDash([])
   canvas.strokeStyle = ink('--wind', plot.root)
   canvas.lineWidth = 2 * scale
   canvas.lineCap = 'round'

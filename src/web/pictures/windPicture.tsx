@@ -66,6 +66,7 @@ export function WindPicture({ runs, heights }: { runs: ShownRun[]; heights: [num
         stroke: ink(index === 0 ? '--wind' : runToken(index, 'ascent')),
         width: index === 0 ? 2.5 : 1.5,
         spanGaps: true,
+        pxAlign: 0,
         points: { show: false },
       })),
     ],

@@ -44,9 +44,9 @@ export function clock(seconds: number, withSeconds = true): string {
 
 /** A place in decimal degrees with its hemispheres. */
 export function place(latitudeDeg: number, longitudeDeg: number, decimals = 4): string {
-  const north = `${Math.abs(latitudeDeg).toFixed(decimals)}° ${latitudeDeg < 0 ? 'S' : 'N'}`
-  const east = `${Math.abs(longitudeDeg).toFixed(decimals)}° ${longitudeDeg < 0 ? 'W' : 'E'}`
-  return `${north} ${east}`
+  const north = `${Math.abs(latitudeDeg).toFixed(decimals)}°\u00a0${latitudeDeg < 0 ? 'S' : 'N'}`
+  const east = `${Math.abs(longitudeDeg).toFixed(decimals)}°\u00a0${longitudeDeg < 0 ? 'W' : 'E'}`
+  return `${north}, ${east}`
 }
 
 function windReading(fromDeg: number, speedMs: number): string {
