@@ -14,6 +14,7 @@ import { mapStyle } from './mapStyle.ts'
 import { nearestMoment } from './nearestMoment.ts'
 import { PlaceMarkers } from './placeMarkers.ts'
 import { areaShapes, landingPoints, landingRegions, NOTHING, topOf } from './shapes.ts'
+import { layTiles } from './tiles.ts'
 import { trackLines, trackPlaces } from './trackLines.ts'
 
 setWorkerUrl(workerUrl)
@@ -37,6 +38,7 @@ export class FlightChart {
   private frame: MapFrame
   private places: MapPlace[][]
   private ready = false
+  private closed = false
 
   constructor(box: HTMLElement, props: PicturesProps) {
     this.props = props
@@ -70,6 +72,7 @@ export class FlightChart {
     view.once('style.load', () => {
       this.ready = true
       this.draw()
+      void this.layTiles()
     })
     view.on('move', () => {
       this.furniture.place()
@@ -132,6 +135,7 @@ export class FlightChart {
   }
 
   close(): void {
+    this.closed = true
     for (const undo of this.undo) undo()
     this.coasts.close()
     this.view.remove()
@@ -140,7 +144,22 @@ export class FlightChart {
   private draw(): void {
     this.put('tracks', trackLines(this.props.runs, this.frame, this.view.getContainer()))
     this.drawShapes()
+    this.fitTiles()
     this.drawFurniture()
+  }
+
+  /** The operator's tiles, where there are any: in Mercator's projection, so not on a turned globe. */
+  private async layTiles(): Promise<void> {
+    await layTiles(this.view, () => this.closed)
+    if (!this.closed) this.fitTiles()
+  }
+
+  private fitTiles(): void {
+    if (!this.view.getLayer('tiles')) return
+    const visibility = this.frame.turnedTo ? 'none' : 'visible'
+    this.view.setLayoutProperty('tiles', 'visibility', visibility)
+    const dark = matchMedia('(prefers-color-scheme: dark)').matches
+    this.view.setPaintProperty('tiles', 'raster-brightness-max', dark ? 0.7 : 1)
   }
 
   private drawShapes(): void {

@@ -41,8 +41,7 @@ export class PlaceMarkers {
   /** Keeps the marker of the moment where the balloon is then. Returns what stops it. */
   followMoment(track: () => readonly TrackRow[], frame: () => MapFrame): () => void {
     return effect(() => {
-      const elapsed = cursorElapsed.value
-      void this.placed.value
+      const elapsed = this.placed.value >= 0 ? cursorElapsed.value : null
       if (elapsed === null) {
         this.moment.remove()
         return
