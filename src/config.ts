@@ -1,4 +1,6 @@
+import { resolve } from 'node:path'
 import { z } from 'zod'
+import { placeless, type TileSetting } from './service/tiles.ts'
 
 const environmentSchema = z.object({
   HOST: z.string().min(1).default('127.0.0.1'),
@@ -11,6 +13,15 @@ const environmentSchema = z.object({
   DATABASE_FILE: z.string().min(1).default('driftbook.sqlite'),
   LOG_LEVEL: z.enum(['trace', 'debug', 'info', 'warn', 'error', 'fatal', 'silent']).default('info'),
   DEMO: z.enum(['on', 'off']).default('on'),
+  TILES: z
+    .string()
+    .min(1)
+    .superRefine((text, context) => {
+      const message = isUrl(text) ? templateFault(text) : fileFault(text)
+      if (message !== null) context.addIssue({ code: 'custom', message })
+    })
+    .optional(),
+  TILES_ATTRIBUTION: z.string().max(500).default(''),
 })
 
 /** How the service was asked to run. */
@@ -22,6 +33,8 @@ export interface Config {
   logLevel: z.output<typeof environmentSchema>['LOG_LEVEL']
   /** Whether an empty database gets the demo flight */
   demo: boolean
+  /** What the page's map is drawn on; null: its own coasts alone */
+  tiles: TileSetting | null
 }
 
 /**
@@ -37,12 +50,41 @@ export function readConfig(environment: NodeJS.ProcessEnv): Config {
     })
     throw new Error(`The environment is malformed. ${faults.join('. ')}`)
   }
-  const { HOST, PORT, DATABASE_FILE, LOG_LEVEL, DEMO } = result.data
+  const { HOST, PORT, DATABASE_FILE, LOG_LEVEL, DEMO, TILES, TILES_ATTRIBUTION } = result.data
   return {
     host: HOST,
     port: PORT,
     databaseFile: DATABASE_FILE,
     logLevel: LOG_LEVEL,
     demo: DEMO === 'on',
+    tiles: TILES === undefined ? null : tileSetting(TILES, TILES_ATTRIBUTION),
   }
+}
+
+function tileSetting(text: string, attribution: string): TileSetting {
+  return isUrl(text)
+    ? { kind: 'xyz', template: text, attribution }
+    : { kind: 'pmtiles', file: resolve(text), attribution }
+}
+
+function isUrl(text: string): boolean {
+  return /^[a-z][a-z0-9+.-]*:\/\//i.test(text)
+}
+
+function templateFault(text: string): string | null {
+  if (!URL.canParse(placeless(text))) return 'is no URL'
+  const { protocol, host, username } = new URL(placeless(text))
+  if (protocol !== 'http:' && protocol !== 'https:') return 'must begin with http:// or https://'
+  if (username !== '') return 'must not carry a user name: every page would show it'
+  const missing = ['{z}', '{x}', '{y}'].filter((place) => !text.includes(place))
+  if (missing.length > 0) return `must hold ${missing.join(', ')}, where a tile's numbers go`
+  if (!text.toLowerCase().includes(host)) return 'must not hold {z}, {x} or {y} in its host'
+  const other = /\{(?![zxy]\})[^}]*\}?/.exec(text)
+  return other ? `holds ${other[0]}: only {z}, {x} and {y} are filled in` : null
+}
+
+function fileFault(text: string): string | null {
+  return text.endsWith('.pmtiles')
+    ? null
+    : 'must be an XYZ template (https://…/{z}/{x}/{y}.png) or the path of a .pmtiles file'
 }

@@ -2,6 +2,7 @@ import { pino } from 'pino'
 import { readConfig } from './config.ts'
 import { addDemo, demoTable } from './demo.ts'
 import { buildApp } from './service/app.ts'
+import { openTiles } from './service/tiles.ts'
 import { Store } from './store/store.ts'
 
 const MIGRATIONS = new URL('../migrations', import.meta.url).pathname
@@ -9,10 +10,11 @@ const MIGRATIONS = new URL('../migrations', import.meta.url).pathname
 /** Starts the service; resolves when it listens. */
 async function start(): Promise<void> {
   const config = readConfig(process.env)
+  const tiles = config.tiles && openTiles(config.tiles)
   // People read standard output; the log goes to standard error.
   const logger = pino({ level: config.logLevel }, pino.destination(2))
   const store = new Store(config.databaseFile, MIGRATIONS)
-  const app = await buildApp(store, logger, { warmPlanning: true })
+  const app = await buildApp(store, logger, { warmPlanning: true, tiles })
 
   const stop = async () => {
     await app.close()

@@ -13,12 +13,13 @@ import { dispersionWork } from './dispersions.ts'
 import { JobRunner } from './jobRunner.ts'
 import { describeRoute, describeSchemas, openApiInfo } from './openApi.ts'
 import { servePage } from './page.ts'
-import { answerError, faultyRequest, Problem, sendProblem } from './problems.ts'
+import { answerError, faultyRequest, notThere, sendProblem } from './problems.ts'
 import { dispersionRoutes } from './routes/dispersions.ts'
 import { fillRoutes } from './routes/fills.ts'
 import { flightRoutes } from './routes/flights.ts'
 import { healthRoutes } from './routes/health.ts'
 import { jobRoutes } from './routes/jobs.ts'
+import { mapRoutes } from './routes/map.ts'
 import { outcomeRoutes } from './routes/outcomes.ts'
 import { profileRoutes } from './routes/profiles.ts'
 import { rerunRoutes } from './routes/reruns.ts'
@@ -26,30 +27,40 @@ import { runRoutes } from './routes/runs.ts'
 import { trialRoutes } from './routes/trials.ts'
 import { windowRoutes } from './routes/windows.ts'
 import { schemaFaults } from './schemaFaults.ts'
+import { foreignOrigin, type TileSource } from './tiles.ts'
 import { warmUp } from './warmUp.ts'
 import { windowsWork } from './windows.ts'
 
-/** What pages may load: nothing from elsewhere. Plain HTTP is served, so nothing forces TLS. */
-const securityHeaders = {
-  strictTransportSecurity: false,
-  contentSecurityPolicy: {
-    useDefaults: false,
-    directives: {
-      defaultSrc: ["'self'"],
-      baseUri: ["'self'"],
-      formAction: ["'self'"],
-      frameAncestors: ["'self'"],
-      objectSrc: ["'none'"],
-      imgSrc: ["'self'", 'data:', 'blob:'],
-      styleSrc: ["'self'", "'unsafe-inline'"],
-      workerSrc: ["'self'", 'blob:'],
+/**
+ * What pages may load: nothing from elsewhere, but for the map tiles of an operator who named a source.
+ * Plain HTTP is served, so nothing forces TLS.
+ */
+function securityHeaders(tiles: TileSource | null) {
+  const elsewhere = foreignOrigin(tiles) ?? []
+  return {
+    strictTransportSecurity: false,
+    contentSecurityPolicy: {
+      useDefaults: false,
+      directives: {
+        defaultSrc: ["'self'"],
+        baseUri: ["'self'"],
+        connectSrc: ["'self'"].concat(elsewhere),
+        formAction: ["'self'"],
+        frameAncestors: ["'self'"],
+        objectSrc: ["'none'"],
+        imgSrc: ["'self'", 'data:', 'blob:'].concat(elsewhere),
+        styleSrc: ["'self'", "'unsafe-inline'"],
+        workerSrc: ["'self'"],
+      },
     },
-  },
+  }
 }
 
 export interface AppOptions {
   /** Start the planning threads with the service, not with the first request that needs them */
   warmPlanning?: boolean
+  /** What the page's map is drawn on; its own coasts alone unless given */
+  tiles?: TileSource | null
 }
 
 /** Builds the service on a store; it is not listening yet. */
@@ -72,14 +83,12 @@ export async function buildApp(
   })
   app.setSerializerCompiler(() => JSON.stringify)
   app.setErrorHandler(answerError)
-  app.setNotFoundHandler((request, reply) =>
-    sendProblem(reply, new Problem(404, `There is nothing at ${request.method} ${request.url}.`)),
-  )
+  app.setNotFoundHandler((request, reply) => sendProblem(reply, notThere(request)))
   app.removeAllContentTypeParsers()
   acceptJson(app)
 
   // Plugins from elsewhere
-  await app.register(helmet, securityHeaders)
+  await app.register(helmet, securityHeaders(options.tiles ?? null))
   await app.register(accepts)
   await app.register(swagger, {
     openapi: openApiInfo,
@@ -114,6 +123,7 @@ export async function buildApp(
     return Promise.resolve()
   })
   healthRoutes(typed, context)
+  await app.register((scope) => mapRoutes(scope, options.tiles ?? null))
   await servePage(app)
   return app
 }
