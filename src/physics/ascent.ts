@@ -100,22 +100,20 @@ export function ascend(
 ): void {
   rise.begin(balloon, column, at, departure)
   end.releaseRate = rise.rateHere()
-  recorder?.record(at, end.releaseRate, 'ascent')
+  recorder?.record(at, end.releaseRate, pointAir.windEast, pointAir.windNorth, 'ascent')
 
   const { edgeVolumePerMole } = column.rise(balloon.temperatureOffset)
   const burstVolumePerMole = balloon.burstVolume / balloon.fill.moles
   const { count } = column
-  let slab = column.slabAt(at.altitude)
+  const slab = column.slabAt(at.altitude)
   let burstSlab = slab
   while (burstSlab < count && edgeVolumePerMole[burstSlab + 1] < burstVolumePerMole) burstSlab++
 
-  if (recorder) {
-    for (; slab < burstSlab; slab++) {
-      rise.recordedStep(slab, column.altitude(slab + 1), recorder, 'ascent')
-    }
-  } else if (slab < burstSlab) {
-    rise.through(slab, column.altitude(slab + 1))
-    rise.wholeSlabs(slab + 1, burstSlab)
+  if (slab < burstSlab) {
+    const top = column.altitude(slab + 1)
+    if (recorder) rise.recordedStep(slab, top, recorder, 'ascent')
+    else rise.through(slab, top)
+    rise.wholeSlabs(slab + 1, burstSlab, recorder)
   }
   if (burstSlab === count) throw noBurst(balloon, column)
 
@@ -131,6 +129,7 @@ export function ascend(
 /** Series over the slabs of a column, kept for the next ascent. */
 let best = new Float64Array(0)
 let reynolds = new Float64Array(0)
+let durations = new Float64Array(0)
 let drifts = { altitude: best, east: best, north: best }
 
 /** How near ln(Cd·Re²) is to its jump where the steps become short: some two slabs on either side. */
@@ -165,6 +164,7 @@ class Rise {
     if (best.length < column.count) {
       best = new Float64Array(column.count)
       reynolds = new Float64Array(column.count)
+      durations = new Float64Array(column.count)
       drifts = {
         altitude: new Float64Array(column.count),
         east: new Float64Array(column.count),
@@ -265,10 +265,14 @@ class Rise {
   }
 
   /** Through slabs [first, end), all of each: the same as `through` each, from the tables where it can. */
-  wholeSlabs(first: number, end: number): void {
+  wholeSlabs(first: number, end: number, recorder?: PathRecorder): void {
     const { balloon, column, at, departure } = this
     if (balloon.drag.jump !== null) {
-      for (let slab = first; slab < end; slab++) this.through(slab, column.altitude(slab + 1))
+      for (let slab = first; slab < end; slab++) {
+        const top = column.altitude(slab + 1)
+        if (recorder) this.recordedStep(slab, top, recorder, 'ascent')
+        else this.through(slab, top)
+      }
       return
     }
     const { fill, mass, dragFactor = 1 } = balloon
@@ -290,15 +294,36 @@ class Rise {
       if (reynolds[slab] > highestReynolds) highestReynolds = reynolds[slab]
       const duration = (cubeRootMoles * slowness[slab]) / reynolds[slab]
       elapsed += duration
+      durations[slab] = duration
       altitude[slab] = column.altitude(slab) + column.thickness / 2
       east[slab] = (windEast[slab] + (departure ? departure.east[slab] : 0)) * duration
       north[slab] = (windNorth[slab] + (departure ? departure.north[slab] : 0)) * duration
     }
-    driftAlong(at, first, end, altitude, east, north)
     this.lowestReynolds = lowestReynolds
     this.highestReynolds = highestReynolds
+    if (recorder) {
+      this.recordSlabs(first, end, recorder)
+      return
+    }
+    driftAlong(at, first, end, altitude, east, north)
     at.elapsed += elapsed
     at.altitude = column.altitude(end)
+  }
+
+  /** Moves through slabs [first, end) by their durations and drifts, telling a recorder of the way. */
+  private recordSlabs(first: number, end: number, recorder: PathRecorder): void {
+    const { at, column } = this
+    for (let slab = first; slab < end; slab++) {
+      const from = { ...at }
+      const fromRate = this.rate
+      driftAlong(at, slab, slab + 1, drifts.altitude, drifts.east, drifts.north)
+      at.elapsed += durations[slab]
+      at.altitude = column.altitude(slab + 1)
+      // At the edge between two slabs the balloon rises at the mean of their rates.
+      const next = Math.min(slab + 1, end - 1)
+      this.rate = (column.thickness / durations[slab] + column.thickness / durations[next]) / 2
+      recordStep(recorder, column, from, fromRate, at, this.rate, 'ascent')
+    }
   }
 }
 

@@ -1,6 +1,8 @@
 import { emptyAirState, viscosity, type AirState, type ColumnAir } from './air.ts'
+import { Bends } from './bends.ts'
 import { CEILING } from './constants.ts'
 import { gravity } from './earth.ts'
+import { firstAbove } from './firstAbove.ts'
 import { RiseTable } from './riseTable.ts'
 
 /** Altitude of the lowest slab's bottom, m: below every shore and salt lake. */
@@ -48,14 +50,11 @@ export class Column {
   readonly windEast: Float64Array
   readonly windNorth: Float64Array
 
-  /** Wind at each of the air's breaks, m/s. */
-  readonly breakEast: Float64Array
-  readonly breakNorth: Float64Array
-
   private readonly means: Float64Array
   /** The part of each slab asked for last: many flights leave from, or land at, one altitude. */
   private readonly parts: (MeanPart | undefined)[]
   private riseTable: RiseTable | undefined
+  private bendTable: Bends | undefined
 
   constructor(air: ColumnAir, thickness = SLAB_THICKNESS) {
     this.air = air
@@ -75,15 +74,7 @@ export class Column {
     this.means = new Float64Array(count * 4)
     this.parts = Array<undefined>(count).fill(undefined)
 
-    this.breakEast = new Float64Array(air.breakAltitudes.length)
-    this.breakNorth = new Float64Array(air.breakAltitudes.length)
-
     const state = emptyAirState()
-    air.breakAltitudes.forEach((altitude, index) => {
-      air.sampleAltitude(altitude, state)
-      this.breakEast[index] = state.windEast
-      this.breakNorth[index] = state.windNorth
-    })
     for (let edge = 0; edge <= count; edge++) {
       air.sampleAltitude(this.altitude(edge), state)
       this.edgeTemperature[edge] = state.temperature
@@ -111,6 +102,11 @@ export class Column {
       this.riseTable = new RiseTable(this, temperatureOffset)
     }
     return this.riseTable
+  }
+
+  /** What recording a path through this air needs of it. */
+  get bends(): Bends {
+    return (this.bendTable ??= new Bends(this))
   }
 
   /** Altitude of an edge, m. */
@@ -211,16 +207,4 @@ function meanAir(air: ColumnAir, from: number, to: number, out: AirState): void 
   out.viscosity = viscosity(temperature)
   out.windEast = windEast
   out.windNorth = windNorth
-}
-
-/** Index of the first of ascending `values` above `value`. */
-export function firstAbove(values: Float64Array, value: number): number {
-  let low = 0
-  let high = values.length
-  while (low < high) {
-    const middle = (low + high) >> 1
-    if (values[middle] > value) high = middle
-    else low = middle + 1
-  }
-  return low
 }

@@ -49,7 +49,10 @@ export function descend(
 ): void {
   coast(load, burstRate, column, at)
   fall.begin(load, column, at, departure)
-  recorder?.record(at, 0, 'descent')
+  if (recorder) {
+    column.at(at.altitude, pointAir)
+    recorder.record(at, 0, pointAir.windEast, pointAir.windNorth, 'descent')
+  }
 
   // √q starts from nothing, so the first slabs are stepped in σ = √s, in which the time is smooth.
   const apex = at.altitude
@@ -58,22 +61,16 @@ export function descend(
   for (let step = 1; step <= OPENING_STEPS; step++) {
     const to = step === OPENING_STEPS ? settled : apex - ((step * last) / OPENING_STEPS) ** 2
     fall.openingStep(apex, to)
-    recorder?.record(at, -fall.speed, to > landingAltitude ? 'descent' : 'landing')
+    const phase = to > landingAltitude ? 'descent' : 'landing'
+    recorder?.record(at, -fall.speed, pointAir.windEast, pointAir.windNorth, phase)
   }
 
-  if (!recorder && at.altitude > landingAltitude) {
-    fall.wholeSlabs(column.slabBelow(at.altitude), column.slabAt(landingAltitude))
-  }
-  while (at.altitude > landingAltitude) {
-    const slab = column.slabBelow(at.altitude)
-    const to = Math.max(landingAltitude, column.altitude(slab))
+  if (at.altitude > landingAltitude) {
+    fall.wholeSlabs(column.slabBelow(at.altitude), column.slabAt(landingAltitude), recorder)
     const from = { ...at }
     const fromSpeed = fall.speed
-    fall.slabStep(slab, to)
-    if (recorder) {
-      const phase = to > landingAltitude ? 'descent' : 'landing'
-      recordStep(recorder, column, from, -fromSpeed, at, -fall.speed, phase)
-    }
+    fall.slabStep(column.slabBelow(at.altitude), landingAltitude)
+    if (recorder) recordStep(recorder, column, from, -fromSpeed, at, -fall.speed, 'landing')
   }
   end.peakSpeed = Math.sqrt(fall.peakSquare)
   end.landingSpeed = fall.speed
@@ -98,6 +95,8 @@ let drifts = {
   east: new Float64Array(0),
   north: new Float64Array(0),
 }
+let durations = new Float64Array(0)
+let speeds = new Float64Array(0)
 
 /** The state of a falling load, stepped down through a column. */
 class Fall {
@@ -117,6 +116,8 @@ class Fall {
         east: new Float64Array(column.count),
         north: new Float64Array(column.count),
       }
+      durations = new Float64Array(column.count)
+      speeds = new Float64Array(column.count)
     }
     this.square = 0
     this.peakSquare = 0
@@ -179,12 +180,13 @@ class Fall {
   }
 
   /** Down from slab `first` to slab `last` by whole slabs, but not the last: from the tables. */
-  wholeSlabs(first: number, last: number): void {
+  wholeSlabs(first: number, last: number, recorder?: PathRecorder): void {
     const { at, column, departure, dragPerDensity } = this
     const { thickness, thirdGravity, thirdDensity, edgeGravity, edgeDensity } = column
     const { windEast, windNorth } = column
     const { altitude, east, north } = drifts
     let { square, peakSquare } = this
+    const firstSpeed = this.speed
     let elapsed = 0
     for (let slab = first; slab > last; slab--) {
       // As `radau`, written out with both scales 1.
@@ -206,15 +208,40 @@ class Fall {
       const duration = thickness * (0.75 / Math.sqrt(third) + 0.25 / Math.sqrt(square))
       elapsed += duration
       const step = first - slab
+      durations[step] = duration
+      speeds[step] = Math.sqrt(square)
       altitude[step] = column.altitude(slab) + thickness / 2
       east[step] = (windEast[slab] + (departure ? departure.east[slab] : 0)) * duration
       north[step] = (windNorth[slab] + (departure ? departure.north[slab] : 0)) * duration
     }
-    driftAlong(at, 0, first - last, altitude, east, north)
     this.square = square
     this.peakSquare = peakSquare
+    if (recorder) {
+      this.recordSlabs(first, last, firstSpeed, recorder)
+      return
+    }
+    driftAlong(at, 0, first - last, altitude, east, north)
     at.elapsed += elapsed
     at.altitude = column.altitude(last + 1)
+  }
+
+  /** Moves by whole slabs through their durations and drifts, telling a recorder of the way. */
+  private recordSlabs(
+    first: number,
+    last: number,
+    firstSpeed: number,
+    recorder: PathRecorder,
+  ): void {
+    const { at, column } = this
+    let speed = firstSpeed
+    for (let step = 0; step < first - last; step++) {
+      const from = { ...at }
+      driftAlong(at, step, step + 1, drifts.altitude, drifts.east, drifts.north)
+      at.elapsed += durations[step]
+      at.altitude = column.altitude(first - step)
+      recordStep(recorder, column, from, -speed, at, -speeds[step], 'descent')
+      speed = speeds[step]
+    }
   }
 
   /**

@@ -1,5 +1,5 @@
 import { emptyAirState } from './air.ts'
-import { firstAbove, type Column } from './column.ts'
+import { type Column } from './column.ts'
 import { drift, type Position } from './earth.ts'
 
 /** Where the flight train is, while it flies. Mutable: one per flight, moved along by ascent and descent. */
@@ -14,22 +14,25 @@ export type Phase = 'ascent' | 'burst' | 'descent' | 'landing'
 
 /** Somebody who wants the flight's path and not just its ends. */
 export interface PathRecorder {
-  /** Called at release and after every step; `verticalSpeed` in m/s, upwards positive. */
-  record(at: Whereabouts, verticalSpeed: number, phase: Phase): void
+  /** Called at release and after every step; speeds in m/s, the vertical one upwards positive. */
+  record(
+    at: Whereabouts,
+    verticalSpeed: number,
+    windEast: number,
+    windNorth: number,
+    phase: Phase,
+  ): void
 }
 
-/** How far, m, a recorded path may bend away from the straight line between two recorded points. */
-const RECORDED_BEND = 15
-
-/** A point is left out while the path since the last one told can have bent by no more than this, m. */
-const UNTOLD_BEND = 5
+/** How far, m, a recorded path may stray from the straight line between two recorded points. */
+const STRAY = 15
 
 const air = emptyAirState()
 
 /**
- * Records a step that was flown from one place to another: the points where the wind breaks in between,
- * and enough more that the path never bends far from the straight line, then its end in `phase`. The
- * vertical speeds are in m/s, upwards positive; over one step they hardly differ.
+ * Records a step that was flown from one place to another at a steady pace within one slab: the points
+ * between, where the path would else stray from the straight line, then its end in `phase`. The vertical
+ * speeds are in m/s, upwards positive; over one step they hardly differ.
  */
 export function recordStep(
   recorder: PathRecorder,
@@ -40,63 +43,42 @@ export function recordStep(
   toSpeed: number,
   phase: Phase,
 ): void {
+  const { altitudes, windEast, windNorth, stray, firstOf } = column.bends
   const between = phase === 'burst' || phase === 'ascent' ? 'ascent' : 'descent'
-  const duration = to.elapsed - from.elapsed
-  const pace = duration / (to.altitude - from.altitude)
-  const at = { ...from }
-  let told = from.elapsed
-  let turned = 0
-  column.at(to.altitude, air)
-  const { windEast: toEast, windNorth: toNorth } = air
-  column.at(from.altitude, air)
-  let { windEast, windNorth } = air
-  const { breakAltitudes } = column.air
+  const bottom = Math.min(from.altitude, to.altitude)
+  const top = Math.max(from.altitude, to.altitude)
   const upwards = to.altitude > from.altitude
-  const first = firstAbove(breakAltitudes, Math.min(from.altitude, to.altitude))
-  const end = firstAtLeast(breakAltitudes, Math.max(from.altitude, to.altitude), first)
-  for (let step = 0; step <= end - first; step++) {
-    // The breaks in the order of flight, then the end.
-    const index = upwards ? first + step : end - 1 - step
-    const last = step === end - first
-    const altitude = last ? to.altitude : breakAltitudes[index]
-    const changeEast = (last ? toEast : column.breakEast[index]) - windEast
-    const changeNorth = (last ? toNorth : column.breakNorth[index]) - windNorth
-    const start = at.altitude
-    const wait = pace * (altitude - start)
-    // A velocity that changes steadily by Δ over a time t bends a path from its chord by Δ·t/8.
-    const change = Math.sqrt(changeEast * changeEast + changeNorth * changeNorth)
-    const bend = (change * wait) / 8
-    const parts = Math.max(1, Math.ceil(Math.sqrt(bend / RECORDED_BEND)))
-    for (let part = 1; part <= parts; part++) {
-      const middle = (part - 0.5) / parts
-      const time = wait / parts
-      const height = start + ((altitude - start) * part) / parts
-      drift(
-        at,
-        (at.altitude + height) / 2,
-        (windEast + middle * changeEast) * time,
-        (windNorth + middle * changeNorth) * time,
-      )
-      at.altitude = height
-      at.elapsed += time
-      turned += change / parts
-      // A velocity that ranges over r bends a path of duration t from its chord by at most r·t/4.
-      if (height !== to.altitude && turned * (at.elapsed - told) > 4 * UNTOLD_BEND) {
-        told = at.elapsed
-        turned = 0
-        const share = (at.elapsed - from.elapsed) / duration
-        recorder.record(at, fromSpeed + share * (toSpeed - fromSpeed), between)
-      }
-    }
-    windEast += changeEast
-    windNorth += changeNorth
-  }
-  recorder.record(to, toSpeed, phase)
-}
+  const slab = column.slabAt(bottom)
+  const first = firstOf[slab]
+  const end = firstOf[slab + 1]
+  const pace = (to.elapsed - from.elapsed) / (top - bottom)
 
-/** Index of the first of ascending `values`, from index `from` on, that is `value` or more. */
-function firstAtLeast(values: Float64Array, value: number, from: number): number {
-  let index = from
-  while (index < values.length && values[index] < value) index++
-  return index
+  const at = { ...from }
+  column.at(from.altitude, air)
+  let { windEast: lastEast, windNorth: lastNorth } = air
+  let lastAltitude = from.altitude
+  let east = 0
+  let north = 0
+  for (let step = 0; step < end - first; step++) {
+    const point = upwards ? first + step : end - 1 - step
+    const altitude = altitudes[point]
+    if (altitude <= bottom || altitude >= top) continue
+    const wait = pace * Math.abs(altitude - lastAltitude)
+    east += ((lastEast + windEast[point]) / 2) * wait
+    north += ((lastNorth + windNorth[point]) / 2) * wait
+    lastEast = windEast[point]
+    lastNorth = windNorth[point]
+    lastAltitude = altitude
+    if (stray[point] * pace < STRAY) continue
+    drift(at, (at.altitude + altitude) / 2, east, north)
+    east = 0
+    north = 0
+    at.altitude = altitude
+    const share = Math.abs(altitude - from.altitude) / (top - bottom)
+    at.elapsed = from.elapsed + share * (to.elapsed - from.elapsed)
+    const speed = fromSpeed + share * (toSpeed - fromSpeed)
+    recorder.record(at, speed, lastEast, lastNorth, between)
+  }
+  column.at(to.altitude, air)
+  recorder.record(to, toSpeed, air.windEast, air.windNorth, phase)
 }

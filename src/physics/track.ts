@@ -1,4 +1,3 @@
-import { emptyAirState, type Air } from './air.ts'
 import { wrapLongitude } from './earth.ts'
 import { type PathRecorder, type Phase, type Whereabouts } from './path.ts'
 
@@ -9,7 +8,7 @@ const EARTH_RADIUS = 6_371_009
  * How far, m, the kept points may stand off the recorded path at any moment. With what the recorded path
  * itself may bend between two steps this keeps a track within 50 m of the flight.
  */
-const TOLERANCE = 25
+const TOLERANCE = 28
 
 /** A point of a flown track. SI; angles in radians, longitude in [-π, π). */
 export interface TrackPoint extends Whereabouts {
@@ -26,14 +25,22 @@ const LONGITUDE = 1
 const ALTITUDE = 2
 const ELAPSED = 3
 const VERTICAL_SPEED = 4
-const VALUES = 5
+const WIND_EAST = 5
+const WIND_NORTH = 6
+const VALUES = 7
 
 /** Records a flight's path and keeps as few of its points as tell it to within 50 m at every moment. */
 export class TrackRecorder implements PathRecorder {
   private points = new Float64Array(512 * VALUES)
   private readonly phases: Phase[] = []
 
-  record(at: Whereabouts, verticalSpeed: number, phase: Phase): void {
+  record(
+    at: Whereabouts,
+    verticalSpeed: number,
+    windEast: number,
+    windNorth: number,
+    phase: Phase,
+  ): void {
     const offset = this.phases.length * VALUES
     if (offset === this.points.length) {
       const longer = new Float64Array(2 * offset)
@@ -46,31 +53,27 @@ export class TrackRecorder implements PathRecorder {
     points[offset + ALTITUDE] = at.altitude
     points[offset + ELAPSED] = at.elapsed
     points[offset + VERTICAL_SPEED] = verticalSpeed
+    points[offset + WIND_EAST] = windEast
+    points[offset + WIND_NORTH] = windNorth
     this.phases.push(phase)
   }
 
-  /** The track with the wind of the air it was flown in; `releaseTime` in s since 1970 UTC. */
-  track(air: Air, releaseTime: number): TrackPoint[] {
+  /** The track so far. */
+  track(): TrackPoint[] {
     const { points, phases } = this
-    const state = emptyAirState()
     const track: TrackPoint[] = []
     const kept = this.kept()
     for (let index = 0; index < phases.length; index++) {
       if (kept[index] === 0) continue
       const at = index * VALUES
-      const latitude = points[at + LATITUDE]
-      const longitude = points[at + LONGITUDE]
-      const altitude = points[at + ALTITUDE]
-      const elapsed = points[at + ELAPSED]
-      air.sample(latitude, longitude, altitude, releaseTime + elapsed, state)
       track.push({
-        latitude,
-        longitude: wrapLongitude(longitude),
-        altitude,
-        elapsed,
+        latitude: points[at + LATITUDE],
+        longitude: wrapLongitude(points[at + LONGITUDE]),
+        altitude: points[at + ALTITUDE],
+        elapsed: points[at + ELAPSED],
         verticalSpeed: points[at + VERTICAL_SPEED],
-        windEast: state.windEast,
-        windNorth: state.windNorth,
+        windEast: points[at + WIND_EAST],
+        windNorth: points[at + WIND_NORTH],
         phase: phases[index],
       })
     }

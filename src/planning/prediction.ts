@@ -23,7 +23,7 @@ export function predict(plan: FlightPlan, source: AirSource): Prediction {
   const flight = fly(plan, source.column, recorder)
   return {
     flight,
-    track: recorder.track(source.column.air, plan.launch.time),
+    track: recorder.track(),
     reach: geodesicLine(plan.launch, flight.landing),
     cautions: cautionsFor(plan, flight, source),
   }

@@ -20,6 +20,7 @@ import { flightRoutes } from './routes/flights.ts'
 import { healthRoutes } from './routes/health.ts'
 import { jobRoutes } from './routes/jobs.ts'
 import { mapRoutes } from './routes/map.ts'
+import { noticeRoutes } from './routes/notices.ts'
 import { outcomeRoutes } from './routes/outcomes.ts'
 import { profileRoutes } from './routes/profiles.ts'
 import { rerunRoutes } from './routes/reruns.ts'
@@ -111,6 +112,7 @@ export async function buildApp(
   const typed = app as unknown as App
   flightRoutes(typed, context)
   runRoutes(typed, context)
+  noticeRoutes(typed, context)
   rerunRoutes(typed, context)
   trialRoutes(typed, context)
   outcomeRoutes(typed, context)

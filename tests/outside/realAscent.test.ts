@@ -37,7 +37,7 @@ function timingError(freeLift: number, drag: DragChoice): number {
     drag,
   })
   fly(plan, column, {
-    record: ({ altitude, elapsed }, _speed, phase) => {
+    record: ({ altitude, elapsed }, _speed, _east, _north, phase) => {
       if (phase === 'ascent' || phase === 'burst') path.push({ altitude, elapsed })
     },
   })
