@@ -45,7 +45,9 @@ export function Page() {
             <Route path="/book/:flightId">
               {({ flightId }) => <FlightView flightId={flightId} />}
             </Route>
-            <Route path="/soundings" component={SoundingsView} />
+            <Route path="/soundings/:profileId?">
+              {({ profileId }) => <SoundingsView chosen={profileId} />}
+            </Route>
             <Route path="/notice/:runId">{({ runId }) => <NoticeView runId={runId} />}</Route>
             <Route>There is nothing here.</Route>
           </Switch>

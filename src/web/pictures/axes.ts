@@ -1,5 +1,11 @@
 import type uPlot from 'uplot'
+import { plainNumber } from '../readings.ts'
 import { ink } from './ink.ts'
+
+/** A number at an axis, with a decimal where its steps need one. */
+export function tickText(tick: number): string {
+  return plainNumber(tick, Number.isInteger(tick) ? 0 : 1)
+}
 
 const FONT = '12px system-ui, sans-serif'
 

@@ -1,7 +1,7 @@
 import { useMemo } from 'preact/hooks'
 import uPlot from 'uplot'
-import { plainNumber, unitOf, unitSystem } from '../readings.ts'
-import { axis } from './axes.ts'
+import { unitOf, unitSystem } from '../readings.ts'
+import { axis, tickText } from './axes.ts'
 import { ink, runToken, scheme } from './ink.ts'
 import { drawMark, type Mark } from './marks.ts'
 import { burstIndex } from './moment.ts'
@@ -38,7 +38,7 @@ export function HeightPicture({ runs, heights }: { runs: ShownRun[]; heights: [n
       }),
       axis(`Height, ${unit.symbol}`, {
         size: 56,
-        values: (_plot, ticks) => ticks.map((tick) => plainNumber(tick)),
+        values: (_plot, ticks) => ticks.map(tickText),
       }),
     ],
     series: [{}, ...runs.flatMap((_run, index) => runSeries(index))],

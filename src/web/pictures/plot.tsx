@@ -1,20 +1,15 @@
 import { effect } from '@preact/signals'
-import { useEffect, useLayoutEffect, useRef } from 'preact/hooks'
-import uPlot from 'uplot'
-import 'uplot/dist/uPlot.min.css'
+import { useEffect, useRef } from 'preact/hooks'
+import type uPlot from 'uplot'
 import { cursorElapsed } from '../cursor.ts'
+import { type ChartProps, useChart } from './chart.ts'
 import { momentAt } from './moment.ts'
 import { momentKeys } from './momentKeys.ts'
 import { type TrackRow } from './shownRun.ts'
 
-interface PlotProps {
+interface PlotProps extends ChartProps {
   /** What the picture is, for those who do not see it */
   label: string
-  /** Everything but the size; asked for again when `shape` changes */
-  options: () => Omit<uPlot.Options, 'width' | 'height'>
-  /** Names what the options depend on: the plot is made anew only when it changes */
-  shape: string
-  data: uPlot.AlignedData
   track: TrackRow[]
   /** The moment under a point of the plot, s after release */
   momentUnder: (plot: uPlot, left: number, top: number) => number
@@ -24,39 +19,14 @@ interface PlotProps {
 
 /** A chart that shows and moves the shared moment. */
 export function Plot(props: PlotProps) {
-  const box = useRef<HTMLDivElement>(null)
-  const plot = useRef<uPlot | null>(null)
   const latest = useRef(props)
   latest.current = props
-
-  useLayoutEffect(() => {
-    const element = box.current
-    if (!element) return
-    const { options, data } = latest.current
-    const made = new uPlot({ ...options(), ...sizeOf(element) }, data, element)
-    plot.current = made
-    const stopFollowing = followMoment(made, () => latest.current)
-    const watcher = new ResizeObserver(() => {
-      made.setSize(sizeOf(element))
-    })
-    watcher.observe(element)
-    return () => {
-      watcher.disconnect()
-      stopFollowing()
-      made.destroy()
-      plot.current = null
-    }
-  }, [props.shape])
-
-  useEffect(() => {
-    plot.current?.setData(props.data)
-  }, [props.data])
-
-  useEffect(() => {
-    const element = box.current
-    return element ? momentKeys(element, props.label, () => latest.current.track) : undefined
-  }, [props.label, props.track])
-
+  const box = useChart(props, (plot) => followMoment(plot, () => latest.current))
+  useEffect(
+    () =>
+      box.current ? momentKeys(box.current, props.label, () => latest.current.track) : undefined,
+    [props.label, props.track],
+  )
   return <div class="plot" ref={box} />
 }
 
@@ -88,8 +58,4 @@ function followMoment(plot: uPlot, props: () => PlotProps): () => void {
   plot.over.addEventListener('pointermove', point)
   plot.over.addEventListener('pointerleave', leave)
   return stop
-}
-
-function sizeOf(element: HTMLElement): { width: number; height: number } {
-  return { width: Math.max(element.clientWidth, 80), height: Math.max(element.clientHeight, 80) }
 }

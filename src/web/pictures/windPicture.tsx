@@ -1,8 +1,8 @@
 import { useEffect, useMemo, useState } from 'preact/hooks'
 import uPlot from 'uplot'
-import { plainNumber, unitOf, unitSystem } from '../readings.ts'
+import { unitOf, unitSystem } from '../readings.ts'
 import { levelsOf } from './levels.ts'
-import { axis, side } from './axes.ts'
+import { axis, side, tickText } from './axes.ts'
 import { ink, runToken, scheme } from './ink.ts'
 import { elapsedOnAscent } from './moment.ts'
 import { Plot } from './plot.tsx'
@@ -50,9 +50,14 @@ export function WindPicture({ runs, heights }: { runs: ShownRun[]; heights: [num
         side: side.left,
         size: 56,
         space: 30,
-        values: (_plot, ticks) => ticks.map((tick) => plainNumber(tick)),
+        values: (_plot, ticks) => ticks.map(tickText),
       }),
-      axis(`Wind speed, ${speed.symbol}`, { side: side.bottom, size: 30, space: 40 }),
+      axis(`Wind speed, ${speed.symbol}`, {
+        side: side.bottom,
+        size: 30,
+        space: 40,
+        values: (_plot, ticks) => ticks.map(tickText),
+      }),
     ],
     series: [
       {},
