@@ -1,4 +1,4 @@
-import { trialState } from './planState.ts'
+import { type Fault } from './request.ts'
 
 interface FieldProps {
   /** Member of the request, as a JSON pointer */
@@ -8,6 +8,8 @@ interface FieldProps {
   value: string
   type?: 'text' | 'datetime-local'
   hint?: string
+  /** All that is wrong; what belongs to this field is shown beside it */
+  faults: readonly Fault[]
   onType: (value: string) => void
 }
 
@@ -17,9 +19,10 @@ export function fieldId(path: string): string {
 }
 
 /** One value of the plan with its unit, and what is wrong with it. */
-export function Field({ path, label, unit, value, type = 'text', hint, onType }: FieldProps) {
+export function Field(props: FieldProps) {
+  const { path, label, unit, value, type = 'text', hint, onType } = props
   const id = fieldId(path)
-  const faults = trialState.value.faults.filter((fault) => fault.path === path)
+  const faults = props.faults.filter((fault) => fault.path === path)
   const described = [hint && `${id}-hint`, faults.length > 0 && `${id}-fault`]
   return (
     <div class="field">
