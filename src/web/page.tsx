@@ -1,6 +1,7 @@
 import { lazy, Suspense } from 'preact/compat'
 import { Link, Route, Router, Switch } from 'wouter-preact'
 import { useHashLocation } from 'wouter-preact/use-hash-location'
+import { PlanFrom } from './plan/planFrom.tsx'
 import { PlanView } from './plan/planView.tsx'
 import { UnitSwitch } from './parts/unitSwitch.tsx'
 
@@ -38,6 +39,9 @@ export function Page() {
         <Suspense fallback={<p class="waiting">Opening …</p>}>
           <Switch>
             <Route path="/" component={PlanView} />
+            <Route path="/plan/:flightId">
+              {({ flightId }) => <PlanFrom flightId={flightId} />}
+            </Route>
             <Route path="/book" component={BookView} />
             <Route path="/book/:flightId">
               {({ flightId }) => <FlightView flightId={flightId} />}
