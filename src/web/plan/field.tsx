@@ -1,3 +1,4 @@
+import { TextField } from '../parts/textField.tsx'
 import { trialState } from './planState.ts'
 
 interface FieldProps {
@@ -16,39 +17,8 @@ export function fieldId(path: string): string {
   return `plan${path.replaceAll('/', '-')}`
 }
 
-/** One value of the plan with its unit, and what is wrong with it. */
-export function Field({ path, label, unit, value, type = 'text', hint, onType }: FieldProps) {
-  const id = fieldId(path)
+/** One value of the plan, with what the service says of it. */
+export function Field({ path, ...rest }: FieldProps) {
   const faults = trialState.value.faults.filter((fault) => fault.path === path)
-  const described = [hint && `${id}-hint`, faults.length > 0 && `${id}-fault`]
-  return (
-    <div class="field">
-      <label for={id}>{label}</label>
-      <span class="with-unit">
-        <input
-          id={id}
-          type={type}
-          inputMode={type === 'text' && unit ? 'decimal' : undefined}
-          autocomplete="off"
-          value={value}
-          aria-invalid={faults.length > 0}
-          aria-describedby={described.filter(Boolean).join(' ') || undefined}
-          onInput={({ currentTarget }) => {
-            onType(currentTarget.value)
-          }}
-        />
-        {unit && <span class="unit">{unit}</span>}
-      </span>
-      {hint && (
-        <span id={`${id}-hint`} class="hint">
-          {hint}
-        </span>
-      )}
-      {faults.length > 0 && (
-        <span id={`${id}-fault`} class="fault">
-          {faults.map(({ message }) => message).join('; ')}
-        </span>
-      )}
-    </div>
-  )
+  return <TextField {...rest} id={fieldId(path)} faults={faults.map(({ message }) => message)} />
 }

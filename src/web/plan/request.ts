@@ -12,13 +12,7 @@ export interface Fault {
  */
 export function requestOf(draft: PlanDraft): { request: Record<string, unknown>; faults: Fault[] } {
   const faults: Fault[] = []
-  const number = (path: string, text: string, scale = 1): number | undefined => {
-    if (text.trim() === '') return undefined
-    const value = Number(text.trim().replace(',', '.'))
-    if (Number.isFinite(value)) return Number((value * scale).toPrecision(15))
-    faults.push({ path, message: `“${text}” is no number` })
-    return undefined
-  }
+  const number = numberReader(faults)
   const time = new Date(`${draft.releaseTime}Z`)
   const request = {
     ...(draft.title.trim() && { title: draft.title.trim() }),
@@ -59,6 +53,22 @@ export function requestOf(draft: PlanDraft): { request: Record<string, unknown>;
     air: draft.air,
   }
   return { request, faults }
+}
+
+/**
+ * Reads the texts of fields as numbers times a scale. An empty one is left out; what is no number is
+ * added to the faults, at the path of its field.
+ */
+export function numberReader(
+  faults: Fault[],
+): (path: string, text: string, scale?: number) => number | undefined {
+  return (path, text, scale = 1) => {
+    if (text.trim() === '') return undefined
+    const value = Number(text.trim().replace(',', '.'))
+    if (Number.isFinite(value)) return Number((value * scale).toPrecision(15))
+    faults.push({ path, message: `“${text}” is no number` })
+    return undefined
+  }
 }
 
 function parachuteOf(
