@@ -11,6 +11,7 @@ const FlightView = lazy(() => import('./book/flightView.tsx').then((room) => roo
 const SoundingsView = lazy(() =>
   import('./soundings/soundingsView.tsx').then((room) => room.SoundingsView),
 )
+const RunView = lazy(() => import('./pictures/runView.tsx').then((room) => room.RunView))
 const NoticeView = lazy(() => import('./notice/noticeView.tsx').then((room) => room.NoticeView))
 
 const VIEWS = [
@@ -48,6 +49,7 @@ export function Page() {
             <Route path="/soundings/:profileId?">
               {({ profileId }) => <SoundingsView chosen={profileId} />}
             </Route>
+            <Route path="/runs/:runId">{({ runId }) => <RunView runId={runId} />}</Route>
             <Route path="/notice/:runId">{({ runId }) => <NoticeView runId={runId} />}</Route>
             <Route>There is nothing here.</Route>
           </Switch>

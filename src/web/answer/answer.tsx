@@ -1,7 +1,6 @@
 import { type ComponentChildren } from 'preact'
 import { type Run, type Trial } from '../../service/schemas/run.ts'
-import { compassPoint } from '../compass.ts'
-import { distanceWords, durationWords } from '../distances.ts'
+import { durationWords, fromSite } from '../distances.ts'
 import { localClock, utc } from '../parts/moment.ts'
 import { plainNumber, reading } from '../readings.ts'
 import { Cautions } from './cautions.tsx'
@@ -19,10 +18,7 @@ export function Answer({ run }: { run: Run | Trial }) {
         <Head name="Bursts at" value={reading('height', burst.altitudeM)}>
           {utc(burst.time)} · {localClock(burst.time)}
         </Head>
-        <Head
-          name="Lands"
-          value={`${distanceWords(landing.distanceM)} ${compassPoint(landing.bearingDeg)}`}
-        >
+        <Head name="Lands" value={fromSite(landing.distanceM, landing.bearingDeg)}>
           bearing {String(Math.round(landing.bearingDeg) % 360).padStart(3, '0')}° from the site
         </Head>
         <Head name="On the ground" value={durationWords(landing.elapsedS)}>

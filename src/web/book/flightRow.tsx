@@ -1,7 +1,6 @@
 import { Link } from 'wouter-preact'
 import { type Flight } from '../../service/schemas/flight.ts'
-import { compassPoint } from '../compass.ts'
-import { distanceWords } from '../distances.ts'
+import { fromSite } from '../distances.ts'
 import { utc } from '../parts/moment.ts'
 import { place } from '../pictures/words.ts'
 import { reading } from '../readings.ts'
@@ -33,7 +32,7 @@ export function FlightRow({ flight, chosen, onChoose }: FlightRowProps) {
         </h2>
         <p>
           Release {utc(plan.launch.time)}. Burst at {reading('height', burst.altitudeM)}; lands{' '}
-          {distanceWords(landing.distanceM)} {compassPoint(landing.bearingDeg)} of the site, at{' '}
+          {fromSite(landing.distanceM, landing.bearingDeg)}, at{' '}
           {place(landing.latitudeDeg, landing.longitudeDeg)}, {utc(landing.time)}.
         </p>
         <p class="quiet">

@@ -8,6 +8,7 @@ export function momentAt(track: readonly TrackRow[], elapsed: number): TrackRow 
   if (next === 0) return track[0]
   if (next === track.length) return track[track.length - 1]
   const [from, to] = [track[next - 1], track[next]]
+  if (elapsed === from.elapsedS) return from
   const share = (elapsed - from.elapsedS) / (to.elapsedS - from.elapsedS)
   const between = (a: number, b: number) => a + (b - a) * share
   return {

@@ -10,8 +10,8 @@ export function Readout({ track }: { track: TrackRow[] }) {
   return (
     <div class="readout">
       <dl>
-        {readings.map(({ name, value }) => (
-          <div key={name}>
+        {readings.map(({ name, value, wide }) => (
+          <div key={name} class={wide ? 'wide' : ''}>
             <dt>{name}</dt>
             <dd>{elapsed === null ? '–' : value}</dd>
           </div>

@@ -12,6 +12,8 @@ const PHASES = {
 export interface Reading {
   name: string
   value: string
+  /** Longer than the others */
+  wide?: boolean
 }
 
 /** What is read at a moment of a flight. */
@@ -19,10 +21,10 @@ export function readingsAt(row: TrackRow): Reading[] {
   return [
     { name: 'Time', value: `${row.time.slice(11, 19)} UTC` },
     { name: 'After release', value: `${clock(row.elapsedS)}, ${PHASES[row.phase]}` },
+    { name: 'Position', value: place(row.latitudeDeg, row.longitudeDeg), wide: true },
     { name: 'Height', value: reading('height', row.altitudeM) },
-    { name: 'Position', value: place(row.latitudeDeg, row.longitudeDeg) },
     { name: 'Vertical speed', value: signed(reading('verticalSpeed', row.verticalSpeedMs, 1)) },
-    { name: 'Wind', value: windReading(row.windFromDeg, row.windSpeedMs) },
+    { name: 'Wind', value: windReading(row.windFromDeg, row.windSpeedMs), wide: true },
   ]
 }
 

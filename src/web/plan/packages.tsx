@@ -1,17 +1,25 @@
 import { type PackageDraft } from './draft.ts'
 import { Field } from './field.tsx'
-import { change, draft } from './planState.ts'
+import { type Fault } from './request.ts'
+
+interface PackagesProps {
+  packages: readonly PackageDraft[]
+  lineStrengthN: string
+  faults: readonly Fault[]
+  open?: boolean
+  onChange: (changes: { packages?: PackageDraft[]; lineStrengthN?: string }) => void
+}
 
 /** The single packages on the line and its strength: they decide the class of the balloon. */
-export function Packages() {
-  const { packages, lineStrengthN } = draft.value
+export function Packages(props: PackagesProps) {
+  const { packages, lineStrengthN, faults, open, onChange } = props
   const put = (index: number, changes: Partial<PackageDraft>) => {
-    change({
+    onChange({
       packages: packages.map((one, at) => (at === index ? { ...one, ...changes } : one)),
     })
   }
   return (
-    <details>
+    <details open={open}>
       <summary>
         Packages on the line{packages.length > 0 && `: ${packages.length}`} (for the notice sheet)
       </summary>
@@ -24,6 +32,7 @@ export function Packages() {
                 path={`${path}/name`}
                 label="Package"
                 value={one.name}
+                faults={faults}
                 onType={(name) => {
                   put(index, { name })
                 }}
@@ -34,6 +43,7 @@ export function Packages() {
                   label="Mass"
                   unit="g"
                   value={one.massG}
+                  faults={faults}
                   onType={(massG) => {
                     put(index, { massG })
                   }}
@@ -43,6 +53,7 @@ export function Packages() {
                   label="Smallest face"
                   unit="cm²"
                   value={one.smallestFaceCm2}
+                  faults={faults}
                   onType={(smallestFaceCm2) => {
                     put(index, { smallestFaceCm2 })
                   }}
@@ -51,7 +62,7 @@ export function Packages() {
               <button
                 type="button"
                 onClick={() => {
-                  change({ packages: packages.filter((_, at) => at !== index) })
+                  onChange({ packages: packages.filter((_, at) => at !== index) })
                 }}
               >
                 Take package {index + 1} off
@@ -63,7 +74,7 @@ export function Packages() {
           type="button"
           onClick={() => {
             const added = { name: `Package ${packages.length + 1}`, massG: '', smallestFaceCm2: '' }
-            change({ packages: [...packages, added] })
+            onChange({ packages: [...packages, added] })
           }}
         >
           Add a package
@@ -73,8 +84,9 @@ export function Packages() {
           label="The line parts at"
           unit="N"
           value={lineStrengthN}
+          faults={faults}
           onType={(value) => {
-            change({ lineStrengthN: value })
+            onChange({ lineStrengthN: value })
           }}
         />
       </div>

@@ -3,7 +3,7 @@ import { Choice } from './choice.tsx'
 import { type PlanDraft } from './draft.ts'
 import { Field } from './field.tsx'
 import { Packages } from './packages.tsx'
-import { change, draft } from './planState.ts'
+import { change, draft, trialState } from './planState.ts'
 
 type TextMember = {
   [Name in keyof PlanDraft]: string extends PlanDraft[Name] ? Name : never
@@ -23,6 +23,7 @@ function Value({ name, ...rest }: ValueProps) {
   return (
     <Field
       {...rest}
+      faults={trialState.value.faults}
       value={draft.value[name]}
       onType={(value) => {
         change({ [name]: value })
@@ -123,7 +124,12 @@ export function PlanForm() {
           />
         </div>
         <ParachuteChoice />
-        <Packages />
+        <Packages
+          packages={draft.value.packages}
+          lineStrengthN={draft.value.lineStrengthN}
+          faults={trialState.value.faults}
+          onChange={change}
+        />
       </fieldset>
 
       <fieldset>

@@ -1,8 +1,7 @@
 import { useEffect } from 'preact/hooks'
 import { lazy, Suspense } from 'preact/compat'
 import { Answer } from '../answer/answer.tsx'
-import { compassPoint } from '../compass.ts'
-import { distanceWords } from '../distances.ts'
+import { fromSite } from '../distances.ts'
 import { reading } from '../readings.ts'
 import { newDraft } from './draft.ts'
 import { FaultSummary } from './faultSummary.tsx'
@@ -53,10 +52,7 @@ export function PlanView() {
             </Suspense>
             <p class="glance" aria-hidden="true">
               <span>bursts {reading('height', trial.burst.altitudeM)}</span>
-              <span>
-                lands {distanceWords(trial.landing.distanceM)}{' '}
-                {compassPoint(trial.landing.bearingDeg)}
-              </span>
+              <span>lands {fromSite(trial.landing.distanceM, trial.landing.bearingDeg)}</span>
             </p>
           </>
         )}

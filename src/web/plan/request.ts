@@ -6,13 +6,34 @@ export interface Fault {
   message: string
 }
 
+type TrainDraft = Pick<PlanDraft, 'packages' | 'lineStrengthN'>
+type ReadNumber = (path: string, text: string, scale?: number) => number | undefined
+
+/** Reads numbers from their text, and gathers what is none. */
+export function numberReader(): { number: ReadNumber; faults: Fault[] } {
+  const faults: Fault[] = []
+  const number: ReadNumber = (path, text, scale = 1) => {
+    if (text.trim() === '') return undefined
+    const value = Number(text.trim().replace(',', '.'))
+    if (Number.isFinite(value)) return Number((value * scale).toPrecision(15))
+    faults.push({ path, message: `“${text}” is no number` })
+    return undefined
+  }
+  return { number, faults }
+}
+
+/** The change of a stored flight that says how its load is made up, and what is no number in it. */
+export function trainChange(train: TrainDraft): { change: object; faults: Fault[] } {
+  const { number, faults } = numberReader()
+  return { change: { payload: { packages: [], ...trainOf(train, number) } }, faults }
+}
+
 /**
  * The request that a draft makes, and what is no number in it. Members left empty are left out, so that
  * the service says what is missing and fills in what has a default.
  */
 export function requestOf(draft: PlanDraft): { request: Record<string, unknown>; faults: Fault[] } {
-  const faults: Fault[] = []
-  const number = numberReader(faults)
+  const { number, faults } = numberReader()
   const time = new Date(`${draft.releaseTime}Z`)
   const request = {
     ...(draft.title.trim() && { title: draft.title.trim() }),
@@ -35,14 +56,7 @@ export function requestOf(draft: PlanDraft): { request: Record<string, unknown>;
     neckLiftG: number('/neckLiftG', draft.neckLiftG),
     payload: {
       massG: number('/payload/massG', draft.payloadMassG),
-      ...(draft.packages.length > 0 && {
-        packages: draft.packages.map(({ name, massG, smallestFaceCm2 }, index) => ({
-          name,
-          massG: number(`/payload/packages/${index}/massG`, massG),
-          smallestFaceCm2: number(`/payload/packages/${index}/smallestFaceCm2`, smallestFaceCm2),
-        })),
-      }),
-      lineStrengthN: number('/payload/lineStrengthN', draft.lineStrengthN),
+      ...trainOf(draft, number),
     },
     parachute: parachuteOf(draft, number),
     drag:
@@ -55,26 +69,21 @@ export function requestOf(draft: PlanDraft): { request: Record<string, unknown>;
   return { request, faults }
 }
 
-/**
- * Reads the texts of fields as numbers times a scale. An empty one is left out; what is no number is
- * added to the faults, at the path of its field.
- */
-export function numberReader(
-  faults: Fault[],
-): (path: string, text: string, scale?: number) => number | undefined {
-  return (path, text, scale = 1) => {
-    if (text.trim() === '') return undefined
-    const value = Number(text.trim().replace(',', '.'))
-    if (Number.isFinite(value)) return Number((value * scale).toPrecision(15))
-    faults.push({ path, message: `“${text}” is no number` })
-    return undefined
+/** How the load is made up, as far as somebody said. */
+function trainOf({ packages, lineStrengthN }: TrainDraft, number: ReadNumber) {
+  return {
+    ...(packages.length > 0 && {
+      packages: packages.map(({ name, massG, smallestFaceCm2 }, index) => ({
+        name,
+        massG: number(`/payload/packages/${index}/massG`, massG),
+        smallestFaceCm2: number(`/payload/packages/${index}/smallestFaceCm2`, smallestFaceCm2),
+      })),
+    }),
+    lineStrengthN: number('/payload/lineStrengthN', lineStrengthN),
   }
 }
 
-function parachuteOf(
-  draft: PlanDraft,
-  number: (path: string, text: string) => number | undefined,
-): Record<string, number | undefined> {
+function parachuteOf(draft: PlanDraft, number: ReadNumber): Record<string, number | undefined> {
   switch (draft.parachuteBy) {
     case 'area':
       return { dragAreaM2: number('/parachute/dragAreaM2', draft.dragAreaM2) }

@@ -23,8 +23,7 @@ export const dispersion = new Work<DispersionAnswer>('/v1/trials/dispersion')
 /** What is asked for the sheet as it stands, and what in the spreads is no number. */
 export function dispersionRequest(): { request: object; faults: Fault[] } {
   const { title: _title, ...plan } = requestOf(draft.value).request
-  const faults: Fault[] = []
-  const number = numberReader(faults)
+  const { number, faults } = numberReader()
   const spread = Object.fromEntries(
     spreadInputs.map(({ name, one }) => [
       name,
