@@ -75,7 +75,10 @@ function Remarks({ answer }: { answer: DispersionAnswer }) {
       <p class="hint">
         ± is one standard deviation; 0 switches one off; left empty, the grey number is taken. The
         share is that of the scatter of the landing places
-        {told < 0.99 && told > 0 && `; ${plainNumber((1 - told) * 100)} % come from several together`}.
+        {told < 0.99 &&
+          told > 0 &&
+          `; ${plainNumber((1 - told) * 100)} % come from several together`}
+        .
       </p>
       <details>
         <summary>Where the usual spreads come from</summary>

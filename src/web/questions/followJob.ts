@@ -32,12 +32,11 @@ export function followJob(id: string, stop: AbortSignal, follower: Follower): vo
   // A stream that breaks is not waited for: the job is looked up until the service is back.
   events.onerror = () => {
     close()
-    void lookUp(id, stop, follower)
+    if (!stop.aborted) void lookUp(id, stop, follower)
   }
 }
 
 async function lookUp(id: string, stop: AbortSignal, follower: Follower): Promise<void> {
-  if (stop.aborted) return
   try {
     const job = await call<JobAnswer>('GET', `/v1/jobs/${id}`, undefined, { signal: stop })
     follower.told(job)
@@ -49,6 +48,9 @@ async function lookUp(id: string, stop: AbortSignal, follower: Follower): Promis
       return
     }
     follower.away()
-    setTimeout(() => void lookUp(id, stop, follower), RETRY)
+    const timer = setTimeout(() => void lookUp(id, stop, follower), RETRY)
+    stop.addEventListener('abort', () => {
+      clearTimeout(timer)
+    })
   }
 }

@@ -14,7 +14,10 @@ export function AreasPanel() {
     try {
       const found = readAreas(source)
       for (const { name, polygon } of found) addArea(polygon, name)
-      setSaid({ fault: false, words: `${found.length === 1 ? 'One area' : `${found.length} areas`} taken.` })
+      setSaid({
+        fault: false,
+        words: `${found.length === 1 ? 'One area' : `${found.length} areas`} taken.`,
+      })
       setText('')
     } catch (error) {
       setSaid({ fault: true, words: (error as Error).message })

@@ -1,7 +1,7 @@
 import { signal, type Signal } from '@preact/signals'
 import { type ComponentChildren } from 'preact'
 import { lazy, Suspense } from 'preact/compat'
-import './planning.css'
+import './questions.css'
 
 const SurePanel = lazy(() => import('./surePanel.tsx').then((room) => room.SurePanel))
 const AreasPanel = lazy(() => import('./areasPanel.tsx').then((room) => room.AreasPanel))

@@ -99,10 +99,9 @@ function Spans({ answer }: { answer: DispersionAnswer }) {
         {height(burst.altitudeM.p50)}; the plan says {height(nominal.burst.altitudeM)}
       </li>
       <li>
-        Nine in ten are on the ground between{' '}
-        <strong>{durationWords(landing.elapsedS.p05)}</strong> and{' '}
-        <strong>{durationWords(landing.elapsedS.p95)}</strong> after the planned release; the plan
-        says {durationWords(planned)}
+        Nine in ten are on the ground between <strong>{durationWords(landing.elapsedS.p05)}</strong>{' '}
+        and <strong>{durationWords(landing.elapsedS.p95)}</strong> after the planned release; the
+        plan says {durationWords(planned)}
       </li>
       {inRegions.map(({ name, share }, index) => (
         <li key={index}>

@@ -44,7 +44,9 @@ function areasOf(shape: GeoJSON | null): FoundArea[] {
       return Array.isArray(shape.geometries) ? shape.geometries.flatMap(areasOf) : []
     case 'Polygon':
     case 'MultiPolygon':
-      return [{ name: '', polygon: { type: shape.type, coordinates: shape.coordinates } as Polygon }]
+      return [
+        { name: '', polygon: { type: shape.type, coordinates: shape.coordinates } as Polygon },
+      ]
     default:
       return []
   }
