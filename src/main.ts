@@ -7,6 +7,9 @@ import { Store } from './store/store.ts'
 
 const MIGRATIONS = new URL('../migrations', import.meta.url).pathname
 
+/** How long requests under way may take to end when the program is stopped. */
+const GRACE_MS = 2000
+
 /** Starts the service; resolves when it listens. */
 async function start(): Promise<void> {
   const config = readConfig(process.env)
@@ -17,7 +20,12 @@ async function start(): Promise<void> {
   const app = await buildApp(store, logger, { warmPlanning: true, tiles })
 
   const stop = async () => {
+    // Browsers hold connections open on which they never asked anything: they are not waited for.
+    const grace = setTimeout(() => {
+      app.server.closeAllConnections()
+    }, GRACE_MS)
     await app.close()
+    clearTimeout(grace)
     store.close()
   }
   for (const signal of ['SIGINT', 'SIGTERM'] as const) {

@@ -3,7 +3,7 @@ import { createRequire } from 'node:module'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { type Browser, type BrowserContextOptions, chromium, type Page } from 'playwright-core'
-import { afterAll, beforeAll, describe, expect } from 'vitest'
+import { afterAll, beforeAll, describe, expect, onTestFinished } from 'vitest'
 import { end, startServer, type StartedServer } from '../service/startedServer.ts'
 
 /** The browser: the one that is named, or Debian's. */
@@ -24,6 +24,10 @@ export interface BrowserRoom {
   server: StartedServer
   /** Opens a view, `#/soundings` for one, in a fresh context */
   open: (view: string, options?: BrowserContextOptions) => Promise<Opened>
+  /** Stops the server, as a failing laptop would */
+  stop: () => Promise<void>
+  /** Starts it again on the same address and database */
+  startAgain: () => Promise<void>
 }
 
 /** Tests in a real browser on the built program; skipped where there is no browser, but for CI. */
@@ -39,10 +43,11 @@ export function inChromium(
   describe.skipIf(!runs)(title, { timeout: 60_000 }, () => {
     const folder = mkdtempSync(join(tmpdir(), 'driftbook-browser-'))
     let browser: Browser
-    const room = { open } as BrowserRoom
+    const settings = { DATABASE_FILE: join(folder, 'a.sqlite'), ...environment }
+    const room = { open, stop, startAgain } as BrowserRoom
 
     beforeAll(async () => {
-      room.server = await startServer({ DATABASE_FILE: join(folder, 'a.sqlite'), ...environment })
+      room.server = await startServer(settings)
       browser = await chromium.launch({
         executablePath: CHROMIUM,
         // WebGL without a graphics card.
@@ -55,12 +60,22 @@ export function inChromium(
       rmSync(folder, { recursive: true })
     })
 
+    async function stop(): Promise<void> {
+      await end(room.server, 'SIGTERM')
+    }
+    async function startAgain(): Promise<void> {
+      const { port } = new URL(room.server.address)
+      room.server = await startServer({ ...settings, PORT: port })
+    }
+
     async function open(view: string, options: BrowserContextOptions = {}): Promise<Opened> {
       const context = await browser.newContext({
         viewport: { width: 1280, height: 1100 },
         reducedMotion: 'reduce',
         ...options,
       })
+      // A map left open goes on drawing, without a graphics card at the cost of all other tests.
+      onTestFinished(() => context.close())
       const [foreign, complaints]: [string[], string[]] = [[], []]
       const { address } = room.server
       await context.route(
