@@ -11,6 +11,7 @@ const environmentSchema = z.object({
   DATABASE_FILE: z.string().min(1).default('driftbook.sqlite'),
   LOG_LEVEL: z.enum(['trace', 'debug', 'info', 'warn', 'error', 'fatal', 'silent']).default('info'),
   DEMO: z.enum(['on', 'off']).default('on'),
+  WEBHOOKS: z.enum(['off', 'public', 'on']).default('off'),
 })
 
 /** How the service was asked to run. */
@@ -22,6 +23,8 @@ export interface Config {
   logLevel: z.output<typeof environmentSchema>['LOG_LEVEL']
   /** Whether an empty database gets the demo flight */
   demo: boolean
+  /** Whether webhooks are posted: not at all, to public addresses only, or to any address */
+  webhooks: 'off' | 'public' | 'on'
 }
 
 /**
@@ -37,12 +40,13 @@ export function readConfig(environment: NodeJS.ProcessEnv): Config {
     })
     throw new Error(`The environment is malformed. ${faults.join('. ')}`)
   }
-  const { HOST, PORT, DATABASE_FILE, LOG_LEVEL, DEMO } = result.data
+  const { HOST, PORT, DATABASE_FILE, LOG_LEVEL, DEMO, WEBHOOKS } = result.data
   return {
     host: HOST,
     port: PORT,
     databaseFile: DATABASE_FILE,
     logLevel: LOG_LEVEL,
     demo: DEMO === 'on',
+    webhooks: WEBHOOKS,
   }
 }

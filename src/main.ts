@@ -12,7 +12,7 @@ async function start(): Promise<void> {
   // People read standard output; the log goes to standard error.
   const logger = pino({ level: config.logLevel }, pino.destination(2))
   const store = new Store(config.databaseFile, MIGRATIONS)
-  const app = await buildApp(store, logger, { warmPlanning: true })
+  const app = await buildApp(store, logger, { warmPlanning: true, webhooks: config.webhooks })
 
   const stop = async () => {
     await app.close()

@@ -8,6 +8,7 @@ test('nothing set is the documented default', () => {
     databaseFile: 'driftbook.sqlite',
     logLevel: 'info',
     demo: true,
+    webhooks: 'off',
   })
 })
 
@@ -18,6 +19,7 @@ test('every variable is read', () => {
     DATABASE_FILE: '/data/a.sqlite',
     LOG_LEVEL: 'warn',
     DEMO: 'off',
+    WEBHOOKS: 'public',
   }
   expect(readConfig(environment)).toEqual({
     host: '0.0.0.0',
@@ -25,6 +27,7 @@ test('every variable is read', () => {
     databaseFile: '/data/a.sqlite',
     logLevel: 'warn',
     demo: false,
+    webhooks: 'public',
   })
 })
 
@@ -35,6 +38,7 @@ test.each([
   ['PORT', '-1'],
   ['LOG_LEVEL', 'loud'],
   ['DEMO', 'false'],
+  ['WEBHOOKS', 'yes'],
   ['HOST', ''],
   ['DATABASE_FILE', ''],
 ])('%s=%s is refused by name', (name, value) => {

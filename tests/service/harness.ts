@@ -4,7 +4,7 @@ import { join } from 'node:path'
 import { type FastifyInstance } from 'fastify'
 import request from 'supertest'
 import { onTestFinished } from 'vitest'
-import { buildApp } from '../../src/service/app.ts'
+import { buildApp, type AppOptions } from '../../src/service/app.ts'
 import { type Run } from '../../src/service/schemas/run.ts'
 import { type Flight } from '../../src/service/schemas/flight.ts'
 import { type ProfileAnswer } from '../../src/service/schemas/profile.ts'
@@ -20,10 +20,10 @@ export interface Service {
   http: ReturnType<typeof request>
 }
 
-export async function startService(): Promise<Service> {
+export async function startService(options: AppOptions = {}): Promise<Service> {
   const folder = mkdtempSync(join(tmpdir(), 'driftbook-'))
   const store = new Store(join(folder, 'test.sqlite'), MIGRATIONS)
-  const app = await buildApp(store, false)
+  const app = await buildApp(store, false, options)
   await app.listen({ host: '127.0.0.1', port: 0 })
   onTestFinished(async () => {
     await app.close()
