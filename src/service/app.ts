@@ -14,13 +14,15 @@ import { EventStreams } from './eventStreams.ts'
 import { JobRunner } from './jobRunner.ts'
 import { describeRoute, describeSchemas, openApiInfo } from './openApi.ts'
 import { servePage } from './page.ts'
-import { answerError, faultyRequest, Problem, sendProblem } from './problems.ts'
+import { answerError, faultyRequest, notThere, sendProblem } from './problems.ts'
 import { dispersionRoutes } from './routes/dispersions.ts'
 import { eventRoutes } from './routes/events.ts'
 import { fillRoutes } from './routes/fills.ts'
 import { flightRoutes } from './routes/flights.ts'
 import { healthRoutes } from './routes/health.ts'
 import { jobRoutes } from './routes/jobs.ts'
+import { mapRoutes } from './routes/map.ts'
+import { noticeRoutes } from './routes/notices.ts'
 import { outcomeRoutes } from './routes/outcomes.ts'
 import { profileRoutes } from './routes/profiles.ts'
 import { rerunRoutes } from './routes/reruns.ts'
@@ -29,27 +31,35 @@ import { trialRoutes } from './routes/trials.ts'
 import { watchRoutes } from './routes/watches.ts'
 import { windowRoutes } from './routes/windows.ts'
 import { schemaFaults } from './schemaFaults.ts'
+import { foreignOrigin, type TileSource } from './tiles.ts'
 import { warmUp } from './warmUp.ts'
 import { Watcher } from './watcher.ts'
 import { Webhooks, WEBHOOK_TIMING, type WebhookMode, type WebhookTiming } from './webhooks.ts'
 import { windowsWork } from './windows.ts'
 
-/** What pages may load: nothing from elsewhere. Plain HTTP is served, so nothing forces TLS. */
-const securityHeaders = {
-  strictTransportSecurity: false,
-  contentSecurityPolicy: {
-    useDefaults: false,
-    directives: {
-      defaultSrc: ["'self'"],
-      baseUri: ["'self'"],
-      formAction: ["'self'"],
-      frameAncestors: ["'self'"],
-      objectSrc: ["'none'"],
-      imgSrc: ["'self'", 'data:', 'blob:'],
-      styleSrc: ["'self'", "'unsafe-inline'"],
-      workerSrc: ["'self'", 'blob:'],
+/**
+ * What pages may load: nothing from elsewhere, but for the map tiles of an operator who named a source.
+ * Plain HTTP is served, so nothing forces TLS.
+ */
+function securityHeaders(tiles: TileSource | null) {
+  const elsewhere = foreignOrigin(tiles) ?? []
+  return {
+    strictTransportSecurity: false,
+    contentSecurityPolicy: {
+      useDefaults: false,
+      directives: {
+        defaultSrc: ["'self'"],
+        baseUri: ["'self'"],
+        connectSrc: ["'self'"].concat(elsewhere),
+        formAction: ["'self'"],
+        frameAncestors: ["'self'"],
+        objectSrc: ["'none'"],
+        imgSrc: ["'self'", 'data:', 'blob:'].concat(elsewhere),
+        styleSrc: ["'self'", "'unsafe-inline'"],
+        workerSrc: ["'self'"],
+      },
     },
-  },
+  }
 }
 
 export interface AppOptions {
@@ -58,6 +68,8 @@ export interface AppOptions {
   /** Off unless said otherwise: the service reaches out to nobody */
   webhooks?: WebhookMode
   webhookTiming?: Partial<WebhookTiming>
+  /** What the page's map is drawn on; its own coasts alone unless given */
+  tiles?: TileSource | null
 }
 
 /** Builds the service on a store; it is not listening yet. */
@@ -80,14 +92,12 @@ export async function buildApp(
   })
   app.setSerializerCompiler(() => JSON.stringify)
   app.setErrorHandler(answerError)
-  app.setNotFoundHandler((request, reply) =>
-    sendProblem(reply, new Problem(404, `There is nothing at ${request.method} ${request.url}.`)),
-  )
+  app.setNotFoundHandler((request, reply) => sendProblem(reply, notThere(request)))
   app.removeAllContentTypeParsers()
   acceptJson(app)
 
   // Plugins from elsewhere
-  await app.register(helmet, securityHeaders)
+  await app.register(helmet, securityHeaders(options.tiles ?? null))
   await app.register(accepts)
   await app.register(swagger, {
     openapi: openApiInfo,
@@ -121,6 +131,7 @@ export async function buildApp(
   const typed = app as unknown as App
   flightRoutes(typed, context)
   runRoutes(typed, context)
+  noticeRoutes(typed, context)
   rerunRoutes(typed, context)
   trialRoutes(typed, context)
   outcomeRoutes(typed, context)
@@ -135,6 +146,7 @@ export async function buildApp(
     return Promise.resolve()
   })
   healthRoutes(typed, context)
+  await app.register((scope) => mapRoutes(scope, options.tiles ?? null))
   await servePage(app)
   return app
 }

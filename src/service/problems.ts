@@ -31,6 +31,11 @@ export function notFound(what: string, id: string): Problem {
   return new Problem(404, `There is no ${what} with the id ${id}.`)
 }
 
+/** The problem of an address where there is nothing. */
+export function notThere({ method, url }: { method: string; url: string }): Problem {
+  return new Problem(404, `There is nothing at ${method} ${url}.`)
+}
+
 /** Turns every error into its answer: the one place where that is done. */
 export function answerError(error: FastifyError, request: FastifyRequest, reply: FastifyReply) {
   const problem = problemOf(error)

@@ -97,7 +97,7 @@ export function shiftBetween(
     landingBearingDeg: bearingDegrees(line.bearing),
     landingTimeS: round(seconds(run.landing.time) - seconds(before.landing.time), 3),
     burstAltitudeM: round(run.burst.altitudeM - before.burst.altitudeM, 3),
-    planChanged: withoutAir(run.plan) !== withoutAir(before.plan),
+    planChanged: fliesDifferently(run.plan, before.plan),
   }
 }
 
@@ -125,6 +125,12 @@ function cautionAnswer({ code, message, span }: Caution): Run['cautions'][number
   }
 }
 
-function withoutAir({ air: _air, ...plan }: Plan): string {
-  return JSON.stringify(plan)
+/** Whether two plans fly differently in the same air. */
+export function fliesDifferently(one: Plan, other: Plan): boolean {
+  return flownPart(one) !== flownPart(other)
+}
+
+/** Without what does not change the flight: its air, and how its load is made up. */
+function flownPart({ air: _air, payload, ...plan }: Plan): string {
+  return JSON.stringify({ ...plan, payload: payload.massG })
 }

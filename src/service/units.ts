@@ -4,6 +4,9 @@ export const DEGREE = Math.PI / 180
 /** Grams in a kilogram. */
 export const GRAMS = 1000
 
+/** Square centimetres in a square metre. */
+export const SQUARE_CENTIMETRES = 1e4
+
 /** Pascals in a hectopascal. */
 export const HECTOPASCAL = 100
 

@@ -1,6 +1,7 @@
 import { lazy, Suspense } from 'preact/compat'
 import { Link, Route, Router, Switch } from 'wouter-preact'
 import { useHashLocation } from 'wouter-preact/use-hash-location'
+import { PlanFrom } from './plan/planFrom.tsx'
 import { PlanView } from './plan/planView.tsx'
 import { UnitSwitch } from './parts/unitSwitch.tsx'
 
@@ -10,6 +11,7 @@ const FlightView = lazy(() => import('./book/flightView.tsx').then((room) => roo
 const SoundingsView = lazy(() =>
   import('./soundings/soundingsView.tsx').then((room) => room.SoundingsView),
 )
+const RunView = lazy(() => import('./pictures/runView.tsx').then((room) => room.RunView))
 const NoticeView = lazy(() => import('./notice/noticeView.tsx').then((room) => room.NoticeView))
 
 const VIEWS = [
@@ -37,11 +39,17 @@ export function Page() {
         <Suspense fallback={<p class="waiting">Opening …</p>}>
           <Switch>
             <Route path="/" component={PlanView} />
+            <Route path="/plan/:flightId">
+              {({ flightId }) => <PlanFrom flightId={flightId} />}
+            </Route>
             <Route path="/book" component={BookView} />
             <Route path="/book/:flightId">
               {({ flightId }) => <FlightView flightId={flightId} />}
             </Route>
-            <Route path="/soundings" component={SoundingsView} />
+            <Route path="/soundings/:profileId?">
+              {({ profileId }) => <SoundingsView chosen={profileId} />}
+            </Route>
+            <Route path="/runs/:runId">{({ runId }) => <RunView runId={runId} />}</Route>
             <Route path="/notice/:runId">{({ runId }) => <NoticeView runId={runId} />}</Route>
             <Route>There is nothing here.</Route>
           </Switch>

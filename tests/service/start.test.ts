@@ -1,5 +1,7 @@
 import { spawnSync } from 'node:child_process'
+import { once } from 'node:events'
 import { mkdtempSync } from 'node:fs'
+import { connect } from 'node:net'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { expect, test } from 'vitest'
@@ -33,6 +35,17 @@ test('DEMO=off leaves the database empty', async () => {
   expect(await (await fetch(`${server.address}/health`)).json()).toMatchObject({ flights: 0 })
   await end(server, 'SIGINT')
   expect(server.process.exitCode).toBe(0)
+})
+
+test('a connection that never asks anything does not keep the program from stopping', async () => {
+  const server = await startServer({ DATABASE_FILE: freshFile(), DEMO: 'off' })
+  const silent = connect(Number(new URL(server.address).port), '127.0.0.1')
+  await once(silent, 'connect')
+  const start = performance.now()
+  await end(server, 'SIGTERM')
+  silent.destroy()
+  expect(server.process.exitCode).toBe(0)
+  expect(performance.now() - start).toBeLessThan(15_000) // it was the minute of a header's time-out
 })
 
 test('a malformed variable is refused by name', () => {

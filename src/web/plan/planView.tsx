@@ -1,4 +1,62 @@
-/** To be written. */
+import { useEffect } from 'preact/hooks'
+import { lazy, Suspense } from 'preact/compat'
+import { Answer } from '../answer/answer.tsx'
+import { fromSite } from '../distances.ts'
+import { reading } from '../readings.ts'
+import { newDraft } from './draft.ts'
+import { FaultSummary } from './faultSummary.tsx'
+import { PlanForm } from './planForm.tsx'
+import { draft, keepPredicting, trialState } from './planState.ts'
+import { StoreFlight } from './storeFlight.tsx'
+import './plan.css'
+
+const Pictures = lazy(() => import('../pictures/pictures.tsx').then((room) => room.Pictures))
+
+/** The plan sheet and what comes of it. */
 export function PlanView() {
-  return <h1>PlanView</h1>
+  useEffect(keepPredicting, [])
+  const { trial, stale } = trialState.value
+  return (
+    <div class="desk">
+      <div class="stack">
+        <h1>Plan a flight</h1>
+        <PlanForm />
+        <button
+          type="button"
+          onClick={() => {
+            draft.value = newDraft()
+          }}
+        >
+          Begin a new plan
+        </button>
+      </div>
+      <div class="stack">
+        <FaultSummary />
+        {!trial && <p class="waiting">Predicting …</p>}
+        {trial && (
+          <>
+            <section class="sheet" aria-labelledby="prediction" aria-busy={stale}>
+              <h2 id="prediction">
+                Prediction
+                {stale && <span class="stale-note"> of the plan as it was before</span>}
+              </h2>
+              <Answer run={trial} />
+            </section>
+            <StoreFlight />
+            <Suspense fallback={<p class="waiting">Drawing …</p>}>
+              <Pictures
+                runs={[
+                  { key: 'plan', label: trial.air.name, run: trial, track: trial.track ?? [] },
+                ]}
+              />
+            </Suspense>
+            <p class="glance" aria-hidden="true">
+              <span>bursts {reading('height', trial.burst.altitudeM)}</span>
+              <span>lands {fromSite(trial.landing.distanceM, trial.landing.bearingDeg)}</span>
+            </p>
+          </>
+        )}
+      </div>
+    </div>
+  )
 }

@@ -1,0 +1,52 @@
+import { useState } from 'preact/hooks'
+import { v7 as uuid } from 'uuid'
+import { type AirReference } from '../../service/schemas/plan.ts'
+import { type Run } from '../../service/schemas/run.ts'
+import { call } from '../api/client.ts'
+import { AirChoice } from '../parts/airChoice.tsx'
+import { Fault } from '../parts/fault.tsx'
+import { shiftWords } from './shiftWords.ts'
+
+/** Flies the stored plan again in other air. */
+export function FlyOneAgain(props: { flightId: string; onFlown: (run: Run) => void }) {
+  const [air, setAir] = useState<AirReference>({ kind: 'standard' })
+  const [error, setError] = useState<Error | null>(null)
+  const [flown, setFlown] = useState<Run | null>(null)
+  const fly = async () => {
+    setError(null)
+    try {
+      const run = await call<Run>(
+        'POST',
+        `/v1/flights/${props.flightId}/runs`,
+        { air },
+        {
+          headers: { 'idempotency-key': uuid() },
+        },
+      )
+      setFlown(run)
+      props.onFlown(run)
+    } catch (failure) {
+      setError(failure as Error)
+    }
+  }
+  return (
+    <form
+      class="stack"
+      aria-label="Fly again"
+      onSubmit={(event) => {
+        event.preventDefault()
+        void fly()
+      }}
+    >
+      <div class="row">
+        <div class="field">
+          <label for="one-air">Fly it again in</label>
+          <AirChoice id="one-air" air={air} onChoose={setAir} />
+        </div>
+        <button class="main">Fly again</button>
+      </div>
+      <Fault error={error} />
+      <p role="status">{flown && `The new run ${shiftWords(flown.shift)}.`}</p>
+    </form>
+  )
+}
