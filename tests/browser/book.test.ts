@@ -3,6 +3,7 @@ import { XMLParser } from 'fast-xml-parser'
 import { expect, test } from 'vitest'
 import { type Flight } from '../../src/service/schemas/flight.ts'
 import { fixture, flightRequest, steadyWind } from '../service/harness.ts'
+import { hoursFromRelease } from '../service/watching.ts'
 import { expectAccessible, expectNoSidewaysScrolling, inChromium } from './chromium.ts'
 import { tabTo } from './keyboard.ts'
 
@@ -204,6 +205,42 @@ inChromium('book', (room) => {
     await page.getByRole('dialog').getByRole('button', { name: 'Delete' }).click()
     await page.getByRole('heading', { name: 'Book of flights' }).waitFor()
     expect((await fetch(`${address}/v1/flights/${flight.id}`)).status).toBe(404)
+  })
+
+  test('a watched flight is flown again by itself, and the open page says so', async () => {
+    const { address } = room.server
+    const launch = { ...flightRequest().launch, time: hoursFromRelease(0) }
+    const { flight } = await post<{ flight: Flight }>(
+      address,
+      '/v1/flights',
+      flightRequest({ title: 'Watched (invented)', launch }),
+    )
+    const { page } = await room.open(`#/book/${flight.id}`)
+    await page.getByText('Not watched').waitFor()
+    await page.getByLabel('Tell where the landing moves more than, km').fill('20')
+    await page.getByRole('button', { name: 'Watch it' }).click()
+    await page.getByText('Watched: it is flown again').waitFor()
+    const watch = await get<{ tellBeyondM: number }>(address, `/v1/flights/${flight.id}/watch`)
+    expect(watch.tellBeyondM).toBe(20_000)
+
+    const runs = page.getByRole('radio', { name: 'Read' })
+    const told = page.getByRole('list', { name: /^What happened to the prediction/ })
+    // A breeze moves it less than 20 km: flown, not told. A gale is told.
+    const validAt = hoursFromRelease(-4)
+    await uploaded(address, steadyWind(270, 1, { validAt }))
+    await expect.poll(() => runs.count(), { timeout: 15_000 }).toBe(2)
+    expect(await told.count()).toBe(0)
+    await uploaded(address, steadyWind(270, 20, { validAt: hoursFromRelease(-2) }))
+    await expect.poll(() => told.getByRole('listitem').count(), { timeout: 15_000 }).toBe(1)
+    // All of the drift since it was last told, which was at the site: as far as it lands from there.
+    const { latestRun } = await get<Flight>(address, `/v1/flights/${flight.id}`)
+    expect(await told.textContent()).toContain(
+      `more than 20.0 km since it was last told: lands ${Math.round(latestRun.landing.distanceM / 1000)} km further east`,
+    )
+    expect(await runs.count()).toBe(3)
+    await page.getByRole('button', { name: 'Watch it no longer' }).click()
+    await page.getByText('Not watched').waitFor()
+    expect((await fetch(`${address}/v1/flights/${flight.id}/watch`)).status).toBe(404)
   })
 
   test('a book opened while the service is away fills in once it is back', async () => {
