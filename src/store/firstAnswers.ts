@@ -11,10 +11,15 @@ export interface FirstAnswer {
   createdAt: string
 }
 
+const HOUR = 3_600_000
+const WEEK = 7 * 24 * HOUR
+
 /** The table of first answers. */
 export class FirstAnswers {
   private readonly inserting
   private readonly one
+  private readonly removing
+  private lastForgot = -Infinity
 
   constructor(database: Database.Database) {
     this.inserting = database.prepare(
@@ -25,10 +30,16 @@ export class FirstAnswers {
       `SELECT key, digest, location, answer, created_at AS createdAt
        FROM first_answers WHERE key = ?`,
     )
+    this.removing = database.prepare('DELETE FROM first_answers WHERE created_at < ?')
   }
 
+  /** Keeps an answer, and now and then forgets those of more than a week before it. */
   insert(answer: FirstAnswer): void {
     this.inserting.run(answer)
+    const now = Date.parse(answer.createdAt)
+    if (now - this.lastForgot < HOUR) return
+    this.lastForgot = now
+    this.removing.run(new Date(now - WEEK).toISOString())
   }
 
   get(key: string): FirstAnswer | undefined {

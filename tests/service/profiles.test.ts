@@ -1,5 +1,5 @@
 import { expect, test } from 'vitest'
-import { profileAnswerSchema } from '../../src/service/schemas/profile.ts'
+import { profileAnswerSchema, type ProfileAnswer } from '../../src/service/schemas/profile.ts'
 import { fixture, postFlight, postProfile, startService, steadyWind } from './harness.ts'
 
 test('a real CSV sounding is read, listed and answered level by level', async () => {
@@ -26,6 +26,27 @@ test('a real CSV sounding is read, listed and answered level by level', async ()
     windFromDeg: 145,
     windSpeedMs: 5.2,
   })
+})
+
+test('a sounding that tells its times shows the ascent that it was', async () => {
+  const service = await startService()
+  const barrow = await postProfile(service, 'igra2-point-barrow-2010-06-01.txt')
+  profileAnswerSchema.parse(barrow)
+  // The file itself: released at 10 m, 31 966 gpm after 107 min 18 s; it tells no displacement.
+  expect(barrow.observedAscent).toMatchObject({ durationS: 6438, meanRateMs: 4.988, drift: null })
+  const norman = await postProfile(service)
+  expect(norman.observedAscent).toBeNull()
+
+  // The same real ascent as a BUFR message with displacements.
+  const answer = await service.http
+    .post('/v1/profiles')
+    .set('content-type', 'application/bufr')
+    .send(fixture('barrow-309052.bufr'))
+    .expect(201)
+  const [profile] = (answer.body as { profiles: ProfileAnswer[] }).profiles
+  expect(profile.observedAscent?.durationS).toBeGreaterThan(3000)
+  expect(profile.observedAscent?.drift?.distanceM).toBeGreaterThan(1000)
+  expect((await service.http.get(`/v1/profiles/${profile.id}`)).body).toEqual(profile)
 })
 
 test('an IGRA file of many soundings makes as many profiles', async () => {

@@ -3,6 +3,7 @@ import { z } from 'zod'
 import { type SoundingLevel } from '../../physics/sounding.ts'
 import { profileSchema } from '../../soundings/json.ts'
 import { levelsAnswer, summary } from '../../soundings/levelsAnswer.ts'
+import { observedAscent, type ObservedAscent } from '../../soundings/observedAscent.ts'
 import { type Sounding } from '../../soundings/profile.ts'
 import { readSoundings } from '../../soundings/readSoundings.ts'
 import { type ProfileRow } from '../../store/profiles.ts'
@@ -25,7 +26,7 @@ import {
   uploadQuery,
   type ProfileAnswer,
 } from '../schemas/profile.ts'
-import { degrees, isoTime, seconds } from '../units.ts'
+import { degrees, isoTime, round, seconds } from '../units.ts'
 
 /** Largest upload, bytes. */
 const UPLOAD_LIMIT = 20_000_000
@@ -41,7 +42,7 @@ const UPLOAD_TYPES = [
 const tags = ['Soundings']
 
 /** Uploaded soundings. They take other bodies than the rest, so register them in a scope of their own. */
-export function profileRoutes(app: App, { store, airs }: Context): void {
+export function profileRoutes(app: App, { store, airs, watcher }: Context): void {
   app.removeAllContentTypeParsers()
   app.addContentTypeParser(
     UPLOAD_TYPES,
@@ -92,7 +93,10 @@ export function profileRoutes(app: App, { store, airs }: Context): void {
           location: rows.length === 1 ? `/v1/profiles/${first.id}` : null,
           answer: { profiles: rows.map(storedProfile) },
           store: () => {
-            for (const row of rows) store.profiles.insert(row)
+            for (const row of rows) {
+              store.profiles.insert(row)
+              watcher.arrived(row)
+            }
           },
         }
       }),
@@ -196,6 +200,7 @@ export function profileRow(sounding: Sounding): ProfileRow {
     latitudeDeg: latitude === null ? null : degrees(latitude),
     longitudeDeg: longitude === null ? null : degrees(longitude),
     ...summary(sounding),
+    observedAscent: ascentAnswer(observedAscent(sounding)),
     notes,
   }
   return {
@@ -210,6 +215,28 @@ export function profileRow(sounding: Sounding): ProfileRow {
   }
 }
 
+function ascentAnswer(ascent: ObservedAscent | null): ProfileAnswer['observedAscent'] {
+  if (!ascent) return null
+  const { durationS, lowestAltitudeM, highestAltitudeM, meanRateMs, drift } = ascent
+  return {
+    durationS,
+    lowestAltitudeM: round(lowestAltitudeM, 1),
+    highestAltitudeM: round(highestAltitudeM, 1),
+    meanRateMs: round(meanRateMs, 3),
+    drift: drift && {
+      altitudeM: round(drift.altitudeM, 1),
+      latitudeDeg: round(drift.latitudeDeg, 6),
+      longitudeDeg: round(drift.longitudeDeg, 6),
+      distanceM: round(drift.distanceM, 1),
+      bearingDeg: round(drift.bearingDeg, 2),
+    },
+  }
+}
+
 function storedProfile(row: { summary: string }): ProfileAnswer {
-  return JSON.parse(row.summary) as ProfileAnswer
+  // Soundings stored by an older program say nothing of their ascent.
+  const { observedAscent: ascent = null, ...answer } = JSON.parse(
+    row.summary,
+  ) as Partial<ProfileAnswer>
+  return { ...answer, observedAscent: ascent } as ProfileAnswer
 }

@@ -47,7 +47,7 @@ export const creatingHeaders = z.object({
     .max(200)
     .optional()
     .describe(
-      'Repeat a request with the same key and body, and the first answer is answered again',
+      'Repeat a request with the same key and body within a week, and the first answer is answered again',
     ),
 })
 

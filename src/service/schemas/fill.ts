@@ -99,3 +99,5 @@ export const fillAnswerSchema = z
     weighing: z.array(weighed).describe('What the weigher at the neck shows in which air'),
   })
   .meta({ id: 'Fill', description: 'The fill that meets a target' })
+
+export type FillAnswer = z.output<typeof fillAnswerSchema>

@@ -8,6 +8,28 @@ const levelsSummarySchema = z.object({
   highestAltitudeM: z.number().nullable(),
 })
 
+const observedAscentSchema = z
+  .object({
+    durationS: z.number().describe('Between the lowest and the highest level with a time'),
+    lowestAltitudeM: z.number(),
+    highestAltitudeM: z.number(),
+    meanRateMs: z.number(),
+    drift: z
+      .object({
+        altitudeM: z.number(),
+        latitudeDeg: latitudeSchema,
+        longitudeDeg: longitudeSchema,
+        distanceM: z.number(),
+        bearingDeg: z.number(),
+      })
+      .nullable()
+      .describe('Where the highest level with a displacement stood, seen from the site'),
+  })
+  .meta({
+    id: 'ObservedAscent',
+    description: 'The flight that a sounding was, for comparison with a predicted one',
+  })
+
 export const profileAnswerSchema = z
   .object({
     id: idSchema,
@@ -18,6 +40,7 @@ export const profileAnswerSchema = z
     longitudeDeg: longitudeSchema.nullable(),
     temperature: levelsSummarySchema,
     wind: levelsSummarySchema,
+    observedAscent: observedAscentSchema.nullable().describe('Null where the levels tell no times'),
     notes: z
       .array(
         z.object({
@@ -43,6 +66,8 @@ export const levelAnswerSchema = z
     windFromDeg: z.number().optional(),
     windSpeedMs: z.number().optional(),
     elapsedS: z.number().optional(),
+    latitudeDisplacementDeg: z.number().optional(),
+    longitudeDisplacementDeg: z.number().optional(),
   })
   .meta({ id: 'Level', description: 'A completed level of a sounding' })
 

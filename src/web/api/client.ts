@@ -6,7 +6,7 @@ export class ServiceProblem extends Error {
   constructor(body: {
     status: number
     detail: string
-    errors?: readonly { path: string; message: string }[]
+    errors?: readonly { path: string; message: string }[] | undefined
   }) {
     super(body.detail)
     this.name = 'ServiceProblem'

@@ -1,7 +1,10 @@
-import { useEffect } from 'preact/hooks'
+import { useEffect, useMemo } from 'preact/hooks'
 import { lazy, Suspense } from 'preact/compat'
 import { Answer } from '../answer/answer.tsx'
 import { fromSite } from '../distances.ts'
+import { addArea, areas } from '../questions/areas.ts'
+import { dispersion } from '../questions/dispersionState.ts'
+import { open, Questions } from '../questions/questions.tsx'
 import { reading } from '../readings.ts'
 import { newDraft } from './draft.ts'
 import { FaultSummary } from './faultSummary.tsx'
@@ -16,6 +19,11 @@ const Pictures = lazy(() => import('../pictures/pictures.tsx').then((room) => ro
 export function PlanView() {
   useEffect(keepPredicting, [])
   const { trial, stale } = trialState.value
+  const runs = useMemo(
+    () =>
+      trial ? [{ key: 'plan', label: trial.air.name, run: trial, track: trial.track ?? [] }] : [],
+    [trial],
+  )
   return (
     <div class="desk">
       <div class="stack">
@@ -43,11 +51,16 @@ export function PlanView() {
               <Answer run={trial} />
             </section>
             <StoreFlight />
+            <Questions />
             <Suspense fallback={<p class="waiting">Drawing …</p>}>
               <Pictures
-                runs={[
-                  { key: 'plan', label: trial.air.name, run: trial, track: trial.track ?? [] },
-                ]}
+                runs={runs}
+                cloud={open.sure.value ? dispersion.state.value.answer : null}
+                areas={areas.value}
+                onAreaDrawn={(polygon) => {
+                  addArea(polygon)
+                  open.areas.value = true
+                }}
               />
             </Suspense>
             <p class="glance" aria-hidden="true">

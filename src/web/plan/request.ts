@@ -10,7 +10,7 @@ type TrainDraft = Pick<PlanDraft, 'packages' | 'lineStrengthN'>
 type ReadNumber = (path: string, text: string, scale?: number) => number | undefined
 
 /** Reads numbers from their text, and gathers what is none. */
-function numberReader(): { number: ReadNumber; faults: Fault[] } {
+export function numberReader(): { number: ReadNumber; faults: Fault[] } {
   const faults: Fault[] = []
   const number: ReadNumber = (path, text, scale = 1) => {
     if (text.trim() === '') return undefined
