@@ -13,6 +13,7 @@ const environmentSchema = z.object({
   DATABASE_FILE: z.string().min(1).default('driftbook.sqlite'),
   LOG_LEVEL: z.enum(['trace', 'debug', 'info', 'warn', 'error', 'fatal', 'silent']).default('info'),
   DEMO: z.enum(['on', 'off']).default('on'),
+  WEBHOOKS: z.enum(['off', 'public', 'on']).default('off'),
   TILES: z
     .string()
     .min(1)
@@ -33,6 +34,8 @@ export interface Config {
   logLevel: z.output<typeof environmentSchema>['LOG_LEVEL']
   /** Whether an empty database gets the demo flight */
   demo: boolean
+  /** Whether webhooks are posted: not at all, to public addresses only, or to any address */
+  webhooks: 'off' | 'public' | 'on'
   /** What the page's map is drawn on; null: its own coasts alone */
   tiles: TileSetting | null
 }
@@ -50,14 +53,15 @@ export function readConfig(environment: NodeJS.ProcessEnv): Config {
     })
     throw new Error(`The environment is malformed. ${faults.join('. ')}`)
   }
-  const { HOST, PORT, DATABASE_FILE, LOG_LEVEL, DEMO, TILES, TILES_ATTRIBUTION } = result.data
+  const { HOST, PORT, DATABASE_FILE, LOG_LEVEL, DEMO, ...rest } = result.data
   return {
     host: HOST,
     port: PORT,
     databaseFile: DATABASE_FILE,
     logLevel: LOG_LEVEL,
     demo: DEMO === 'on',
-    tiles: TILES === undefined ? null : tileSetting(TILES, TILES_ATTRIBUTION),
+    webhooks: rest.WEBHOOKS,
+    tiles: rest.TILES === undefined ? null : tileSetting(rest.TILES, rest.TILES_ATTRIBUTION),
   }
 }
 

@@ -8,6 +8,7 @@ test('nothing set is the documented default', () => {
     databaseFile: 'driftbook.sqlite',
     logLevel: 'info',
     demo: true,
+    webhooks: 'off',
     tiles: null,
   })
 })
@@ -19,6 +20,7 @@ test('every variable is read', () => {
     DATABASE_FILE: '/data/a.sqlite',
     LOG_LEVEL: 'warn',
     DEMO: 'off',
+    WEBHOOKS: 'public',
     TILES: 'https://tiles.example/{z}/{x}/{y}.png?key=1',
     TILES_ATTRIBUTION: 'Invented tiles',
   }
@@ -28,6 +30,7 @@ test('every variable is read', () => {
     databaseFile: '/data/a.sqlite',
     logLevel: 'warn',
     demo: false,
+    webhooks: 'public',
     tiles: {
       kind: 'xyz',
       template: 'https://tiles.example/{z}/{x}/{y}.png?key=1',
@@ -43,6 +46,7 @@ test.each([
   ['PORT', '-1'],
   ['LOG_LEVEL', 'loud'],
   ['DEMO', 'false'],
+  ['WEBHOOKS', 'yes'],
   ['HOST', ''],
   ['DATABASE_FILE', ''],
   ['TILES', ''],

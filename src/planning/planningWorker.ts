@@ -1,3 +1,5 @@
+import { constants, setPriority } from 'node:os'
+import { isMainThread } from 'node:worker_threads'
 import { LRUCache } from 'lru-cache'
 import { type Column } from '../physics/column.ts'
 import { type FlightPlan } from '../physics/flight.ts'
@@ -11,6 +13,12 @@ import { type Spread } from './spread.ts'
 import { surveyTime, type Survey, type SurveyedTime } from './survey.ts'
 
 /** What runs in the threads of the pool. Nothing here keeps anything but columns of air, tabulated. */
+
+// Where planning and answering want the same core, answering goes first. On Linux a thread has a priority
+// of its own; elsewhere this would be the whole program's.
+if (!isMainThread && process.platform === 'linux') {
+  setPriority(constants.priority.PRIORITY_BELOW_NORMAL)
+}
 
 /** Columns kept by each thread: some 20 kB each, and the levels of their soundings. */
 const columns = new LRUCache<string, Column>({ max: 64 })

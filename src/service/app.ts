@@ -10,11 +10,13 @@ import { Airs } from './airs.ts'
 import { acceptJson } from './bodies.ts'
 import { type App, type Context } from './context.ts'
 import { dispersionWork } from './dispersions.ts'
+import { EventStreams } from './eventStreams.ts'
 import { JobRunner } from './jobRunner.ts'
 import { describeRoute, describeSchemas, openApiInfo } from './openApi.ts'
 import { servePage } from './page.ts'
 import { answerError, faultyRequest, notThere, sendProblem } from './problems.ts'
 import { dispersionRoutes } from './routes/dispersions.ts'
+import { eventRoutes } from './routes/events.ts'
 import { fillRoutes } from './routes/fills.ts'
 import { flightRoutes } from './routes/flights.ts'
 import { healthRoutes } from './routes/health.ts'
@@ -26,10 +28,13 @@ import { profileRoutes } from './routes/profiles.ts'
 import { rerunRoutes } from './routes/reruns.ts'
 import { runRoutes } from './routes/runs.ts'
 import { trialRoutes } from './routes/trials.ts'
+import { watchRoutes } from './routes/watches.ts'
 import { windowRoutes } from './routes/windows.ts'
 import { schemaFaults } from './schemaFaults.ts'
 import { foreignOrigin, type TileSource } from './tiles.ts'
 import { warmUp } from './warmUp.ts'
+import { Watcher } from './watcher.ts'
+import { Webhooks, WEBHOOK_TIMING, type WebhookMode, type WebhookTiming } from './webhooks.ts'
 import { windowsWork } from './windows.ts'
 
 /**
@@ -60,6 +65,9 @@ function securityHeaders(tiles: TileSource | null) {
 export interface AppOptions {
   /** Start the planning threads with the service, not with the first request that needs them */
   warmPlanning?: boolean
+  /** Off unless said otherwise: the service reaches out to nobody */
+  webhooks?: WebhookMode
+  webhookTiming?: Partial<WebhookTiming>
   /** What the page's map is drawn on; its own coasts alone unless given */
   tiles?: TileSource | null
 }
@@ -105,10 +113,21 @@ export async function buildApp(
     dispersion: dispersionWork(airs, pool),
     windows: windowsWork(airs, pool),
   })
-  app.addHook('preClose', () => jobs.close())
+  const streams = new EventStreams()
+  const watcher = new Watcher(store, airs, app.log)
+  const timing = { ...WEBHOOK_TIMING, ...options.webhookTiming }
+  const webhooks = new Webhooks(store, options.webhooks ?? 'off', timing, app.log)
+  app.addHook('onListen', () => {
+    watcher.wake() // what an earlier program left
+    webhooks.wake()
+  })
+  app.addHook('preClose', async () => {
+    await Promise.all([jobs.close(), watcher.close(), webhooks.close()])
+    streams.close()
+  })
   app.addHook('onClose', () => pool.close())
   if (options.warmPlanning) app.addHook('onListen', () => warmUp(pool))
-  const context: Context = { store, airs, jobs }
+  const context: Context = { store, airs, jobs, streams, watcher, webhooks }
   const typed = app as unknown as App
   flightRoutes(typed, context)
   runRoutes(typed, context)
@@ -116,6 +135,8 @@ export async function buildApp(
   rerunRoutes(typed, context)
   trialRoutes(typed, context)
   outcomeRoutes(typed, context)
+  watchRoutes(typed, context)
+  eventRoutes(typed, context)
   fillRoutes(typed, context)
   dispersionRoutes(typed, context)
   windowRoutes(typed, context)

@@ -9,13 +9,19 @@ import {
 import { type z } from 'zod'
 import { type Store } from '../store/store.ts'
 import { type Airs } from './airs.ts'
+import { type EventStreams } from './eventStreams.ts'
 import { type JobRunner } from './jobRunner.ts'
+import { type Watcher } from './watcher.ts'
+import { type Webhooks } from './webhooks.ts'
 
 /** What the routes work with. */
 export interface Context {
   store: Store
   airs: Airs
   jobs: JobRunner
+  streams: EventStreams
+  watcher: Watcher
+  webhooks: Webhooks
 }
 
 /** Requests have the types of their schemas; answers are checked against theirs by the tests. */

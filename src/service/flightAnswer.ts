@@ -8,7 +8,6 @@ import { bearingDegrees, round, seconds } from './units.ts'
 
 /** A stored flight with its newest run in short. */
 export function flightAnswer(row: FlightRow, runCount: number, latest: Run): Flight {
-  const { id, createdAt, air, shift, burst, landing } = latest
   return {
     id: row.id,
     title: row.title,
@@ -16,21 +15,27 @@ export function flightAnswer(row: FlightRow, runCount: number, latest: Run): Fli
     updatedAt: row.updatedAt,
     plan: storedPlan(row),
     runCount,
-    latestRun: {
-      id,
-      createdAt,
-      air,
-      shift,
-      burst: { time: burst.time, altitudeM: burst.altitudeM },
-      landing: {
-        time: landing.time,
-        latitudeDeg: landing.latitudeDeg,
-        longitudeDeg: landing.longitudeDeg,
-        distanceM: landing.distanceM,
-        bearingDeg: landing.bearingDeg,
-      },
-    },
+    latestRun: runInShort(latest),
     outcome: row.outcome === null ? null : (JSON.parse(row.outcome) as Outcome),
+  }
+}
+
+/** A run in short. */
+export function runInShort(run: Run): Flight['latestRun'] {
+  const { id, createdAt, air, shift, burst, landing } = run
+  return {
+    id,
+    createdAt,
+    air,
+    shift,
+    burst: { time: burst.time, altitudeM: burst.altitudeM },
+    landing: {
+      time: landing.time,
+      latitudeDeg: landing.latitudeDeg,
+      longitudeDeg: landing.longitudeDeg,
+      distanceM: landing.distanceM,
+      bearingDeg: landing.bearingDeg,
+    },
   }
 }
 

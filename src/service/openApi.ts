@@ -14,6 +14,10 @@ export const openApiInfo = {
   tags: [
     { name: 'Flights', description: 'Planned flights, and what became of them' },
     { name: 'Runs', description: 'Stored predictions and their tracks' },
+    {
+      name: 'Watches',
+      description: 'Flights that keep themselves current, and what happens to them',
+    },
     { name: 'Trials', description: 'Predictions that are not stored' },
     { name: 'Planning', description: 'How much gas, how sure, and when' },
     { name: 'Jobs', description: 'Calculations that take longer than two seconds' },

@@ -62,7 +62,7 @@ function bodyOf({ status, message, faults }: Problem) {
     title: STATUS_CODES[status] ?? 'Error',
     status,
     detail: message,
-    ...(faults.length > 0 ? { errors: faults } : {}),
+    ...(faults.length > 0 ? { errors: [...faults] } : {}),
   }
 }
 

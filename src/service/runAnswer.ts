@@ -86,7 +86,10 @@ export function trialAnswer(
 }
 
 /** How a run differs from the one before: new less old. */
-export function shiftBetween(run: Trial, before: Run): NonNullable<Run['shift']> {
+export function shiftBetween(
+  run: Pick<Run, 'landing' | 'burst' | 'plan'>,
+  before: Run,
+): NonNullable<Run['shift']> {
   const line = geodesicLine(place(before.landing), place(run.landing))
   return {
     againstRunId: before.id,

@@ -1,4 +1,6 @@
 import type Database from 'better-sqlite3'
+import { Deliveries } from './deliveries.ts'
+import { Events } from './events.ts'
 import { FirstAnswers } from './firstAnswers.ts'
 import { Flights } from './flights.ts'
 import { GroupCommit } from './groupCommit.ts'
@@ -6,6 +8,7 @@ import { openDatabase } from './database.ts'
 import { Jobs } from './jobs.ts'
 import { Profiles } from './profiles.ts'
 import { Runs } from './runs.ts'
+import { Watches } from './watches.ts'
 
 /** Everything that Driftbook keeps. */
 export class Store {
@@ -14,6 +17,9 @@ export class Store {
   readonly profiles: Profiles
   readonly firstAnswers: FirstAnswers
   readonly jobs: Jobs
+  readonly watches: Watches
+  readonly events: Events
+  readonly deliveries: Deliveries
   private readonly database: Database.Database
   private readonly group: GroupCommit
 
@@ -26,6 +32,9 @@ export class Store {
     this.profiles = new Profiles(this.database)
     this.firstAnswers = new FirstAnswers(this.database)
     this.jobs = new Jobs(this.database)
+    this.watches = new Watches(this.database)
+    this.events = new Events(this.database)
+    this.deliveries = new Deliveries(this.database)
   }
 
   /**

@@ -6,6 +6,7 @@ import { type App, type Context } from '../context.ts'
 import { answerCreation } from '../creating.ts'
 import { flightAnswer, storedFlight, storedPlan } from '../flightAnswer.ts'
 import { flyRun, flyTrial, now } from '../flying.ts'
+import { keepRun } from '../keeping.ts'
 import { pageAnswer, pageRequest } from '../paging.ts'
 import { changedPlan } from '../planChange.ts'
 import { notFound } from '../problems.ts'
@@ -50,13 +51,14 @@ export function flightRoutes(app: App, { store, airs }: Context): void {
       answerCreation(request, reply, store, () => {
         const plan = planOf(request.body)
         const flight = newFlight(request.body.title, plan)
-        const { run, row } = flyRun(flight.id, plan, null, airs)
+        const made = flyRun(flight.id, plan, null, airs)
+        const { run } = made
         return {
           location: `/v1/flights/${flight.id}`,
           answer: { flight: flightAnswer(flight, 1, run), run },
           store: () => {
             store.flights.insert(flight)
-            store.runs.insert(row)
+            keepRun(store, made)
           },
         }
       }),

@@ -1,4 +1,5 @@
 import { z } from 'zod'
+import { type JobRow } from '../../store/jobs.ts'
 import { type App, type Context } from '../context.ts'
 import { answerOrJob, jobAnswer } from '../jobAnswers.ts'
 import { pageAnswer, pageRequest } from '../paging.ts'
@@ -10,7 +11,7 @@ const tags = ['Jobs']
 const anyAnswer = z.looseObject({}).describe('What the request would have been answered with')
 
 /** Calculations that take longer than two seconds. */
-export function jobRoutes(app: App, { store, jobs }: Context): void {
+export function jobRoutes(app: App, { store, jobs, streams }: Context): void {
   app.get(
     '/v1/jobs',
     {
@@ -78,27 +79,22 @@ export function jobRoutes(app: App, { store, jobs }: Context): void {
     },
     ({ params: { id } }, reply) => {
       const row = jobs.get(id)
-      reply.hijack()
-      const { raw } = reply
-      raw.writeHead(200, {
-        'content-type': 'text/event-stream; charset=utf-8',
-        'cache-control': 'no-store',
-        'x-accel-buffering': 'no',
-      })
-      const send = (event: string, data: unknown) => {
-        raw.write(`event: ${event}\ndata: ${JSON.stringify(data)}\n\n`)
+      const stream = streams.start(reply)
+      const send = (job: JobRow, share: number | null) => {
+        const event = job.state === 'running' ? 'progress' : job.state
+        stream.send(event, JSON.stringify(jobAnswer(job, share)))
       }
-      if (row.state === 'running') send('progress', jobAnswer(row, jobs.progress(id)))
+      if (row.state === 'running') send(row, jobs.progress(id))
       const stop = jobs.watch(id, {
         progress: (share) => {
-          send('progress', jobAnswer(row, share))
+          send(row, share)
         },
         end: (ended) => {
-          send(ended.state, jobAnswer(ended, null))
-          raw.end()
+          send(ended, null)
+          stream.end()
         },
       })
-      raw.on('close', stop)
+      stream.onClose(stop)
     },
   )
 

@@ -42,7 +42,7 @@ const UPLOAD_TYPES = [
 const tags = ['Soundings']
 
 /** Uploaded soundings. They take other bodies than the rest, so register them in a scope of their own. */
-export function profileRoutes(app: App, { store, airs }: Context): void {
+export function profileRoutes(app: App, { store, airs, watcher }: Context): void {
   app.removeAllContentTypeParsers()
   app.addContentTypeParser(
     UPLOAD_TYPES,
@@ -93,7 +93,10 @@ export function profileRoutes(app: App, { store, airs }: Context): void {
           location: rows.length === 1 ? `/v1/profiles/${first.id}` : null,
           answer: { profiles: rows.map(storedProfile) },
           store: () => {
-            for (const row of rows) store.profiles.insert(row)
+            for (const row of rows) {
+              store.profiles.insert(row)
+              watcher.arrived(row)
+            }
           },
         }
       }),

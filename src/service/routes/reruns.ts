@@ -7,6 +7,7 @@ import { type App, type Context } from '../context.ts'
 import { answerCreation } from '../creating.ts'
 import { storedPlan, storedRun } from '../flightAnswer.ts'
 import { flyRun, type FlownRun } from '../flying.ts'
+import { keepRun } from '../keeping.ts'
 import { describeNotFlyable } from '../notFlyableAnswer.ts'
 import { faultyRequest, Problem, type Fault } from '../problems.ts'
 import { creatingHeaders, idSchema, problemAnswers, timeSchema } from '../schemas/common.ts'
@@ -90,7 +91,7 @@ export function rerunRoutes(app: App, { store, airs }: Context): void {
                   `Flight ${flight.id} was deleted meanwhile: nothing is stored.`,
                 )
               }
-              store.runs.insert(made.row)
+              keepRun(store, made)
             }
           },
         }

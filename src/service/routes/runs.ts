@@ -4,6 +4,7 @@ import { type App, type Context } from '../context.ts'
 import { answerCreation } from '../creating.ts'
 import { storedPlan, storedRun } from '../flightAnswer.ts'
 import { flyRun } from '../flying.ts'
+import { keepRun } from '../keeping.ts'
 import { pageAnswer, pageRequest } from '../paging.ts'
 import { notFound } from '../problems.ts'
 import {
@@ -40,12 +41,12 @@ export function runRoutes(app: App, { store, airs }: Context): void {
         const flight = store.flights.get(id)
         if (!flight) throw notFound('flight', id)
         const plan = { ...storedPlan(flight), air: request.body.air }
-        const { run, row } = flyRun(id, plan, storedRun(flight.latestAnswer), airs)
+        const made = flyRun(id, plan, storedRun(flight.latestAnswer), airs)
         return {
-          location: `/v1/runs/${run.id}`,
-          answer: run,
+          location: `/v1/runs/${made.run.id}`,
+          answer: made.run,
           store: () => {
-            store.runs.insert(row)
+            keepRun(store, made)
           },
         }
       }),

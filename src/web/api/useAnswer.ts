@@ -1,5 +1,8 @@
 import { useCallback, useEffect, useState } from 'preact/hooks'
-import { call } from './client.ts'
+import { call, ServiceAway } from './client.ts'
+
+/** A service that does not answer is asked again after this many ms. */
+const AGAIN_MS = 3000
 
 /** What was asked of the service, and how far the asking is. */
 export interface Asked<Answer> {
@@ -20,14 +23,22 @@ export function useAnswer<Answer>(path: string | null): Asked<Answer> {
   useEffect(() => {
     if (path === null) return undefined
     const stop = new AbortController()
+    let timer: ReturnType<typeof setTimeout> | undefined
     call<Answer>('GET', path, undefined, { signal: stop.signal })
       .then((answer) => {
         setState({ answer, error: null })
       })
       .catch((error: unknown) => {
-        if (!stop.signal.aborted) setState(({ answer }) => ({ answer, error: error as Error }))
+        if (stop.signal.aborted) return
+        setState(({ answer }) => ({ answer, error: error as Error }))
+        if (error instanceof ServiceAway) {
+          timer = setTimeout(() => {
+            setRound((before) => before + 1)
+          }, AGAIN_MS)
+        }
       })
     return () => {
+      clearTimeout(timer)
       stop.abort()
     }
   }, [path, round])

@@ -1,4 +1,5 @@
 import { useState } from 'preact/hooks'
+import { Link } from 'wouter-preact'
 import { type Flight } from '../../service/schemas/flight.ts'
 import { call } from '../api/client.ts'
 import { useAnswer } from '../api/useAnswer.ts'
@@ -26,10 +27,13 @@ export function BookView() {
   const path = searchPath(search.value)
   const { answer, error, renew } = useAnswer<FlightPage>(path)
   const [more, setMore] = useState<{ of: FlightPage; pages: FlightPage[] } | null>(null)
+  const [moreError, setMoreError] = useState<Error | null>(null)
   const [chosen, setChosen] = useState<ReadonlySet<string>>(new Set())
   const pages = answer ? [answer, ...(more?.of === answer ? more.pages : [])] : []
   const flights = pages.flatMap((page) => page.items)
   const next = pages.at(-1)?.nextCursor
+  // What a search has hidden is not flown behind its back.
+  const chosenIds = flights.map(({ id }) => id).filter((id) => chosen.has(id))
 
   const choose = (id: string, yes: boolean) => {
     const changed = new Set(chosen)
@@ -39,8 +43,13 @@ export function BookView() {
   }
   const showMore = async () => {
     if (!answer || !next) return
-    const page = await call<FlightPage>('GET', `${path}&cursor=${encodeURIComponent(next)}`)
-    setMore({ of: answer, pages: [...pages.slice(1), page] })
+    setMoreError(null)
+    try {
+      const page = await call<FlightPage>('GET', `${path}&cursor=${encodeURIComponent(next)}`)
+      setMore({ of: answer, pages: [...pages.slice(1), page] })
+    } catch (failure) {
+      setMoreError(failure as Error)
+    }
   }
 
   return (
@@ -49,9 +58,10 @@ export function BookView() {
       <SearchForm />
       <Fault error={error} />
       {!answer && !error && <p class="waiting">Opening the book …</p>}
-      {answer && flights.length === 0 && <p>No stored flight matches.</p>}
+      {answer && flights.length === 0 && <NoFlight />}
       {flights.length > 0 && (
         <>
+          <FlyAgain flightIds={chosenIds} onFlown={renew} />
           <p class="row">
             <label class="tick">
               <input
@@ -78,13 +88,32 @@ export function BookView() {
           </ul>
         </>
       )}
+      <Fault error={moreError} />
       {next && (
         <button type="button" onClick={() => void showMore()}>
           Show more
         </button>
       )}
-      <FlyAgain flightIds={[...chosen]} onFlown={renew} />
     </div>
+  )
+}
+
+function NoFlight() {
+  const { title, from, to } = search.value
+  if (title.trim() === '' && from === '' && to === '') {
+    return (
+      <p>
+        No flight is stored yet: <Link href="/">plan one</Link>.
+      </p>
+    )
+  }
+  return (
+    <p class="row">
+      No stored flight matches.
+      <button type="button" onClick={() => (search.value = { title: '', from: '', to: '' })}>
+        Show all
+      </button>
+    </p>
   )
 }
 

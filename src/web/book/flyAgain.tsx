@@ -1,11 +1,11 @@
-import { v7 as uuid } from 'uuid'
 import { useState } from 'preact/hooks'
 import { Link } from 'wouter-preact'
-import { type AirReference } from '../../service/schemas/plan.ts'
 import { type Run } from '../../service/schemas/run.ts'
 import { call } from '../api/client.ts'
 import { AirChoice } from '../parts/airChoice.tsx'
 import { Fault } from '../parts/fault.tsx'
+import { useRepeatKey } from './repeatKey.ts'
+import { useRerunAir } from './rerunAir.ts'
 import { shiftWords } from './shiftWords.ts'
 
 interface RerunAnswer {
@@ -20,7 +20,9 @@ interface FlyAgainProps {
 
 /** Flies the chosen flights again in one other air, and tells how far each landing moved. */
 export function FlyAgain({ flightIds, onFlown }: FlyAgainProps) {
-  const [air, setAir] = useState<AirReference>({ kind: 'standard' })
+  const [air, setAir] = useRerunAir()
+  const request = { air, flightIds }
+  const { key, spend } = useRepeatKey(JSON.stringify(request))
   const [flown, setFlown] = useState<RerunAnswer | null>(null)
   const [error, setError] = useState<Error | null>(null)
   const [busy, setBusy] = useState(false)
@@ -29,16 +31,9 @@ export function FlyAgain({ flightIds, onFlown }: FlyAgainProps) {
     setBusy(true)
     setError(null)
     try {
-      setFlown(
-        await call<RerunAnswer>(
-          'POST',
-          '/v1/reruns',
-          { air, flightIds },
-          {
-            headers: { 'idempotency-key': uuid() },
-          },
-        ),
-      )
+      const headers = { 'idempotency-key': key }
+      setFlown(await call<RerunAnswer>('POST', '/v1/reruns', request, { headers }))
+      spend()
       onFlown()
     } catch (failure) {
       setError(failure as Error)
@@ -52,17 +47,20 @@ export function FlyAgain({ flightIds, onFlown }: FlyAgainProps) {
       <div class="row">
         <div class="field">
           <label for="again-air">in this air</label>
-          <AirChoice id="again-air" air={air} onChoose={setAir} />
+          {air && <AirChoice id="again-air" air={air} onChoose={setAir} />}
         </div>
         <button
           type="button"
           class="main"
-          disabled={busy || flightIds.length === 0}
+          disabled={busy || !air || flightIds.length === 0}
           onClick={() => void fly()}
         >
-          {flightIds.length === 1 ? 'Fly 1 flight again' : `Fly ${flightIds.length} flights again`}
+          {busy ? 'Flying …' : buttonWords(flightIds.length)}
         </button>
       </div>
+      {flightIds.length === 0 && !flown && (
+        <p class="quiet">Tick the flights below that are to be flown again.</p>
+      )}
       <Fault error={error} />
       <div role="status">
         {flown && (
@@ -83,4 +81,9 @@ export function FlyAgain({ flightIds, onFlown }: FlyAgainProps) {
       </div>
     </section>
   )
+}
+
+function buttonWords(count: number): string {
+  if (count === 0) return 'Fly again'
+  return count === 1 ? 'Fly 1 flight again' : `Fly ${count} flights again`
 }

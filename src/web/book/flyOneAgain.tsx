@@ -1,28 +1,25 @@
 import { useState } from 'preact/hooks'
-import { v7 as uuid } from 'uuid'
-import { type AirReference } from '../../service/schemas/plan.ts'
 import { type Run } from '../../service/schemas/run.ts'
 import { call } from '../api/client.ts'
 import { AirChoice } from '../parts/airChoice.tsx'
 import { Fault } from '../parts/fault.tsx'
+import { useRepeatKey } from './repeatKey.ts'
+import { useRerunAir } from './rerunAir.ts'
 import { shiftWords } from './shiftWords.ts'
 
 /** Flies the stored plan again in other air. */
 export function FlyOneAgain(props: { flightId: string; onFlown: (run: Run) => void }) {
-  const [air, setAir] = useState<AirReference>({ kind: 'standard' })
+  const path = `/v1/flights/${props.flightId}/runs`
+  const [air, setAir] = useRerunAir()
+  const { key, spend } = useRepeatKey(path + JSON.stringify(air))
   const [error, setError] = useState<Error | null>(null)
   const [flown, setFlown] = useState<Run | null>(null)
   const fly = async () => {
     setError(null)
     try {
-      const run = await call<Run>(
-        'POST',
-        `/v1/flights/${props.flightId}/runs`,
-        { air },
-        {
-          headers: { 'idempotency-key': uuid() },
-        },
-      )
+      const headers = { 'idempotency-key': key }
+      const run = await call<Run>('POST', path, { air }, { headers })
+      spend()
       setFlown(run)
       props.onFlown(run)
     } catch (failure) {
@@ -41,9 +38,11 @@ export function FlyOneAgain(props: { flightId: string; onFlown: (run: Run) => vo
       <div class="row">
         <div class="field">
           <label for="one-air">Fly it again in</label>
-          <AirChoice id="one-air" air={air} onChoose={setAir} />
+          {air && <AirChoice id="one-air" air={air} onChoose={setAir} />}
         </div>
-        <button class="main">Fly again</button>
+        <button class="main" disabled={!air}>
+          Fly again
+        </button>
       </div>
       <Fault error={error} />
       <p role="status">{flown && `The new run ${shiftWords(flown.shift)}.`}</p>

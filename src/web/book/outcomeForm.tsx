@@ -3,11 +3,9 @@ import { type Miss, type Outcome } from '../../service/schemas/flight.ts'
 import { type Run } from '../../service/schemas/run.ts'
 import { call } from '../api/client.ts'
 import { useAnswer } from '../api/useAnswer.ts'
-import { compassPoint } from '../compass.ts'
-import { distanceWords, durationWords } from '../distances.ts'
 import { Fault } from '../parts/fault.tsx'
 import { utc } from '../parts/moment.ts'
-import { reading } from '../readings.ts'
+import { missWords } from './missWords.ts'
 import { emptyDraft, outcomeOf, OUTCOME_FIELDS, type OutcomeDraft } from './outcomeDraft.ts'
 
 interface OutcomeFormProps {
@@ -28,7 +26,9 @@ export function OutcomeForm({ flightId, outcome, runs, onKept }: OutcomeFormProp
   const keep = async () => {
     setError(null)
     try {
-      await call('PUT', path, outcomeOf(shown))
+      const observed = outcomeOf(shown)
+      if (Object.keys(observed).length > 0) await call('PUT', path, observed)
+      else if (outcome) await call('DELETE', path)
       setDraft(null)
       renew()
       onKept()
@@ -66,7 +66,7 @@ export function OutcomeForm({ flightId, outcome, runs, onKept }: OutcomeFormProp
           <button>Keep what happened</button>
         </div>
       </form>
-      {answer && (
+      {outcome && answer && (
         <ul>
           {answer.misses.map((miss) => (
             <li key={miss.runId}>
@@ -81,22 +81,4 @@ export function OutcomeForm({ flightId, outcome, runs, onKept }: OutcomeFormProp
 
 function runName(run: Run | undefined): string {
   return run ? `Run of ${utc(run.createdAt)} in ${run.air.name}` : 'An older run'
-}
-
-function missWords(miss: Miss): string {
-  const { landingDistanceM, landingBearingDeg, landingTimeS, burstAltitudeM } = miss
-  const parts: string[] = []
-  if (landingDistanceM !== null) {
-    const point = compassPoint(landingBearingDeg ?? 0)
-    parts.push(`landed ${distanceWords(landingDistanceM)} ${point} of the prediction`)
-  }
-  if (landingTimeS !== null) {
-    const side = landingTimeS > 0 ? 'later' : 'earlier'
-    parts.push(`${durationWords(Math.abs(landingTimeS))} ${side}`)
-  }
-  if (burstAltitudeM !== null) {
-    const side = burstAltitudeM > 0 ? 'higher' : 'lower'
-    parts.push(`burst ${reading('height', Math.abs(burstAltitudeM))} ${side}`)
-  }
-  return parts.join(', ') || 'nothing to compare it with yet'
 }

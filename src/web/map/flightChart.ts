@@ -53,6 +53,8 @@ export class FlightChart {
       pitchWithRotate: false,
       dragRotate: false,
       keyboard: false,
+      // One finger scrolls the page past the map, two move the map.
+      cooperativeGestures: matchMedia('(pointer: coarse)').matches,
       maxPitch: 0,
       fadeDuration: 0,
       maxZoom: 17,
@@ -72,6 +74,7 @@ export class FlightChart {
     view.once('style.load', () => {
       this.ready = true
       this.draw()
+      this.drawFurniture()
       void this.layTiles()
     })
     view.on('move', () => {
@@ -102,6 +105,10 @@ export class FlightChart {
       keysOf(props) !== before.keys ||
       frame.key !== before.frame ||
       (props.cloud && props.cloud !== before.cloud)
+    if (frame.key !== before.frame) {
+      this.fitTiles()
+      this.drawFurniture()
+    }
     if (changed || !this.inView()) this.fit()
   }
 
@@ -124,6 +131,7 @@ export class FlightChart {
         this.view.setPaintProperty(id, name as 'fill-color', value as string)
       }
     }
+    this.fitTiles()
     this.draw()
   }
 
@@ -144,8 +152,6 @@ export class FlightChart {
   private draw(): void {
     this.put('tracks', trackLines(this.props.runs, this.frame, this.view.getContainer()))
     this.drawShapes()
-    this.fitTiles()
-    this.drawFurniture()
   }
 
   /** The operator's tiles, where there are any: in Mercator's projection, so not on a turned globe. */

@@ -11,7 +11,7 @@ import { type MapFrame, type MapPlace } from './frame.ts'
 export class PlaceMarkers {
   private readonly view: MapView
   private readonly moment: Marker
-  private markers: Marker[] = []
+  private markers: Record<Mark, Marker>[] = []
   /** Counts what was placed, so that the moment's marker follows a flight that changes under it */
   private readonly placed = signal(0)
 
@@ -24,18 +24,25 @@ export class PlaceMarkers {
 
   /** Puts the symbols of runs to their places on the map; `places` hold those of each run's rows. */
   place(runs: readonly ShownRun[], places: readonly MapPlace[][]): void {
-    for (const marker of this.markers) marker.remove()
-    // The first run's symbols lie on top.
-    this.markers = [...runs.entries()].reverse().flatMap(([index, { track }]) => {
-      const burst = burstIndex(track)
-      const [first, last] = [places[index][0], places[index][track.length - 1]]
-      return [
-        this.mark('release', index, first),
-        this.mark('burst', index, places[index][burst]),
-        this.mark('landing', index, last, runs.length > 1 ? String(index + 1) : ''),
-      ]
-    })
+    if (this.markers.length !== runs.length) this.make(runs.length)
+    for (const [index, { track }] of runs.entries()) {
+      const { release, burst, landing } = this.markers[index]
+      release.setLngLat(places[index][0])
+      burst.setLngLat(places[index][burstIndex(track)])
+      landing.setLngLat(places[index][track.length - 1])
+    }
     this.placed.value += 1
+  }
+
+  private make(count: number): void {
+    for (const marker of this.markers.flatMap((marks) => Object.values(marks))) marker.remove()
+    // The first run's symbols lie on top.
+    const made = Array.from({ length: count }, (_, index) => count - 1 - index).map((index) => ({
+      release: this.mark('release', index),
+      burst: this.mark('burst', index),
+      landing: this.mark('landing', index, count > 1 ? String(index + 1) : ''),
+    }))
+    this.markers = made.reverse()
   }
 
   /** Keeps the marker of the moment where the balloon is then. Returns what stops it. */
@@ -51,7 +58,7 @@ export class PlaceMarkers {
     })
   }
 
-  private mark(mark: Mark, index: number, place: MapPlace, tag = ''): Marker {
+  private mark(mark: Mark, index: number, tag = ''): Marker {
     const element = document.createElement('div')
     element.className = index === 0 ? 'map-mark' : 'map-mark other'
     element.style.color = `var(${runToken(index, mark === 'landing' ? 'descent' : 'ascent')})`
@@ -62,6 +69,6 @@ export class PlaceMarkers {
       number.textContent = tag
       element.append(number)
     }
-    return new Marker({ element }).setLngLat(place).addTo(this.view)
+    return new Marker({ element }).setLngLat([0, 0]).addTo(this.view)
   }
 }

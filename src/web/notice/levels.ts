@@ -24,7 +24,15 @@ export const askedLevels = kept<AskedLevels>(
 /** Where the notice of a run with these levels is asked for. */
 export function noticePath(runId: string, { flightLevels, altitudesM }: AskedLevels): string {
   const query = new URLSearchParams()
-  if (flightLevels.trim()) query.set('flightLevels', flightLevels.replaceAll(/[\s;]+/g, ''))
-  if (altitudesM.trim()) query.set('altitudesM', altitudesM.replaceAll(/[\s;]+/g, ''))
+  if (flightLevels.trim()) query.set('flightLevels', list(flightLevels))
+  if (altitudesM.trim()) query.set('altitudesM', list(altitudesM))
   return `/v1/runs/${runId}/notice?${query.toString()}`
+}
+
+/** The parts of a typed list with commas between, whatever stood there. */
+function list(text: string): string {
+  return text
+    .split(/[\s,;]+/)
+    .filter((part) => part !== '')
+    .join(',')
 }

@@ -3,12 +3,12 @@ import { type Notice } from '../../service/schemas/notice.ts'
 import { type Plan } from '../../service/schemas/plan.ts'
 import { type Run } from '../../service/schemas/run.ts'
 import { degreesMinutes } from '../answer/degreesMinutes.ts'
-import { parachuteWords } from '../book/planInShort.tsx'
 import { compassPoint } from '../compass.ts'
 import { distanceWords, durationWords } from '../distances.ts'
-import { localClock, utc } from '../parts/moment.ts'
+import { localWithZone, utc } from '../parts/moment.ts'
 import { place } from '../pictures/words.ts'
-import { plainNumber, reading } from '../readings.ts'
+import { reading } from '../readings.ts'
+import { FlightTrain } from './flightTrain.tsx'
 import { Passages } from './passages.tsx'
 
 interface NoticeSheetProps {
@@ -37,7 +37,7 @@ export function NoticeSheet({ run, notice, plan }: NoticeSheetProps) {
       )}
       <dl class="notice-pairs">
         <Pair name="Release">
-          {utc(launch.time)} ({localClock(launch.time)})
+          {utc(launch.time)} ({localWithZone(launch.time)})
         </Pair>
         <Pair name="Site">
           {place(launch.latitudeDeg, launch.longitudeDeg, 5)};{' '}
@@ -51,7 +51,7 @@ export function NoticeSheet({ run, notice, plan }: NoticeSheetProps) {
         <Pair name="Landing">
           {place(landing.latitudeDeg, landing.longitudeDeg, 5)};{' '}
           {degreesMinutes(landing.latitudeDeg, landing.longitudeDeg)}; {utc(landing.time)} (
-          {localClock(landing.time)}), {durationWords(landing.elapsedS)} after release, at{' '}
+          {localWithZone(landing.time)}), {durationWords(landing.elapsedS)} after release, at{' '}
           {reading('verticalSpeed', landing.speedMs, 1)}
         </Pair>
         <Pair name="Greatest extent">
@@ -64,17 +64,7 @@ export function NoticeSheet({ run, notice, plan }: NoticeSheetProps) {
           {run.air.validAt && `, valid ${utc(run.air.validAt)}`}; predicted {utc(run.createdAt)}
         </Pair>
         <Pair name="Flight train">
-          balloon {grams(plan.balloon.massG)}, {plan.gas.kind} {grams(run.fill.gasMassG)}, load{' '}
-          {grams(plan.payload.massG)} under a parachute ({parachuteWords(plan.parachute)})
-          {plan.payload.lineStrengthN !== undefined &&
-            `; the line parts at ${plainNumber(plan.payload.lineStrengthN)} N`}
-          {plan.payload.packages?.map(({ name, massG, smallestFaceCm2 }) => (
-            <span key={name} class="package-line">
-              {name}: {grams(massG)}
-              {smallestFaceCm2 !== undefined &&
-                `, smallest face ${plainNumber(smallestFaceCm2)} cm²`}
-            </span>
-          ))}
+          <FlightTrain run={run} payload={plan.payload} />
         </Pair>
         <Pair name="Class">
           <strong>{notice.balloonClass.name}</strong> by ICAO Annex 2, as{' '}
@@ -84,7 +74,8 @@ export function NoticeSheet({ run, notice, plan }: NoticeSheetProps) {
               {' '}
               Not known, and could make it heavier: {notice.balloonClass.missing.join(', ')}.
             </strong>
-          )}
+          )}{' '}
+          Packages and line are those of the flight’s plan as it stands now.
         </Pair>
       </dl>
       <Passages notice={notice} />
@@ -95,7 +86,9 @@ export function NoticeSheet({ run, notice, plan }: NoticeSheetProps) {
         ))}
         <li>
           Gas cylinders are under high pressure; lines, payloads and burst balloons come down near
-          people and power lines: local codes and licensed practice decide.
+          people and power lines.{' '}
+          {run.plan.gas.kind === 'hydrogen' && 'Hydrogen burns and explodes in mixtures with air. '}
+          Local codes and licensed practice decide.
         </li>
       </ul>
     </article>
@@ -109,8 +102,4 @@ function Pair({ name, children }: { name: string; children: ComponentChildren })
       <dd>{children}</dd>
     </div>
   )
-}
-
-function grams(value: number): string {
-  return `${plainNumber(value)} g`
 }

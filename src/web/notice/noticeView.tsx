@@ -4,7 +4,7 @@ import { type Notice } from '../../service/schemas/notice.ts'
 import { type Run } from '../../service/schemas/run.ts'
 import { useAnswer } from '../api/useAnswer.ts'
 import { Fault } from '../parts/fault.tsx'
-import { askedLevels, noticePath } from './levels.ts'
+import { askedLevels, DEFAULT_LEVELS, noticePath, type AskedLevels } from './levels.ts'
 import { NoticeSheet } from './noticeSheet.tsx'
 import { TrainForm } from './trainForm.tsx'
 import './notice.css'
@@ -15,7 +15,7 @@ export function NoticeView({ runId }: { runId: string }) {
   const notice = useAnswer<Notice>(noticePath(runId, askedLevels.value))
   const flightId = run.answer?.flightId
   const flight = useAnswer<Flight>(flightId ? `/v1/flights/${flightId}` : null)
-  const ready = run.answer && notice.answer && flight.answer
+  const ready = run.answer && notice.answer && flight.answer && !notice.error
 
   return (
     <div class="stack">
@@ -55,7 +55,6 @@ export function NoticeView({ runId }: { runId: string }) {
 }
 
 function LevelsForm() {
-  const { flightLevels, altitudesM } = askedLevels.value
   return (
     <form
       class="row"
@@ -64,26 +63,26 @@ function LevelsForm() {
         event.preventDefault()
       }}
     >
-      <div class="field grow">
-        <label for="flight-levels">Flight levels to list</label>
-        <input
-          id="flight-levels"
-          value={flightLevels}
-          onInput={({ currentTarget }) => {
-            askedLevels.value = { ...askedLevels.value, flightLevels: currentTarget.value }
-          }}
-        />
-      </div>
-      <div class="field grow">
-        <label for="altitudes">Heights to list, m above sea level</label>
-        <input
-          id="altitudes"
-          value={altitudesM}
-          onInput={({ currentTarget }) => {
-            askedLevels.value = { ...askedLevels.value, altitudesM: currentTarget.value }
-          }}
-        />
-      </div>
+      <Levels name="flightLevels" label="Flight levels to list, hundreds of feet" />
+      <Levels name="altitudesM" label="Heights to list, m above sea level" />
+      <button type="button" onClick={() => (askedLevels.value = DEFAULT_LEVELS)}>
+        Usual levels
+      </button>
     </form>
+  )
+}
+
+function Levels({ name, label }: { name: keyof AskedLevels; label: string }) {
+  return (
+    <div class="field grow">
+      <label for={`list-${name}`}>{label}</label>
+      <input
+        id={`list-${name}`}
+        value={askedLevels.value[name]}
+        onInput={({ currentTarget }) => {
+          askedLevels.value = { ...askedLevels.value, [name]: currentTarget.value }
+        }}
+      />
+    </div>
   )
 }

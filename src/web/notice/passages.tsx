@@ -41,7 +41,9 @@ export function Passages({ notice }: { notice: Notice }) {
         </div>
       )}
       <p>
-        Flight levels are met where the air flown in has their pressure.
+        A flight level is a pressure of the standard atmosphere: it is passed where the air that
+        this run flew in has that pressure. Times and places lie on straight lines between the
+        points of the track; heights are geometric, above sea level.
         {missed.length > 0 && ` Never passed: ${missed.join(', ')}.`}
       </p>
     </section>

@@ -4,16 +4,26 @@ const dark = matchMedia('(prefers-color-scheme: dark)')
 
 /** Counts changes of the colour scheme; who draws on a canvas reads it to be drawn again. */
 export const scheme = signal(0)
-dark.addEventListener('change', () => (scheme.value += 1))
+dark.addEventListener('change', () => {
+  inks.clear()
+  scheme.value += 1
+})
+
+/** Colours asked for in this scheme: to ask the browser costs a pass over the page's styles. */
+const inks = new Map<string, string>()
 
 /** The colour of a token (`--ascent`) as it is now within an element, for canvases that know no CSS. */
 export function ink(token: string, within: Element = document.body): string {
-  const probe = document.createElement('span')
-  probe.style.color = `var(${token})`
-  within.append(probe)
-  const { color } = getComputedStyle(probe)
-  probe.remove()
-  return color
+  let colour = inks.get(token)
+  if (colour === undefined) {
+    const probe = document.createElement('span')
+    probe.style.color = `var(${token})`
+    within.append(probe)
+    colour = getComputedStyle(probe).color
+    probe.remove()
+    inks.set(token, colour)
+  }
+  return colour
 }
 
 /** Tokens of the runs after the first, which has `--ascent` and `--descent`. */

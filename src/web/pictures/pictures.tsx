@@ -1,5 +1,6 @@
 import type { Polygon } from 'geojson'
 import { lazy, Suspense } from 'preact/compat'
+import { useRef } from 'preact/hooks'
 import { type DispersionAnswer } from '../../service/schemas/dispersion.ts'
 import { HeightPicture } from './heightPicture.tsx'
 import { Legend } from './legend.tsx'
@@ -24,7 +25,8 @@ export interface PicturesProps {
 
 /** Track, height and wind of one run or several, linked by the moment that one points at. */
 export function Pictures(props: PicturesProps) {
-  const { runs } = props
+  const runs = useSame(props.runs)
+  if (runs.length === 0) return null
   const heights = heightsOf(runs)
   return (
     <section class="pictures" aria-label="Pictures of the flight">
@@ -33,7 +35,7 @@ export function Pictures(props: PicturesProps) {
         <figure class="of-map">
           <figcaption>Ground track</figcaption>
           <Suspense fallback={<p class="waiting">Opening the map …</p>}>
-            <FlightMap {...props} />
+            <FlightMap {...props} runs={runs} />
           </Suspense>
         </figure>
         <figure class="of-height">
@@ -50,6 +52,20 @@ export function Pictures(props: PicturesProps) {
       </div>
     </section>
   )
+}
+
+/** The runs that can be drawn; the same array for as long as the same runs are shown, so that nothing is drawn twice. */
+function useSame(runs: readonly ShownRun[]): ShownRun[] {
+  const kept = useRef<ShownRun[]>([])
+  const drawable = runs.filter(({ track }) => track.length > 1)
+  const same =
+    drawable.length === kept.current.length &&
+    drawable.every(({ key, label, track }, index) => {
+      const before = kept.current[index]
+      return key === before.key && label === before.label && track === before.track
+    })
+  if (!same) kept.current = drawable
+  return kept.current
 }
 
 /** From the lowest to the highest of all runs, m: height and wind share it and can be read across. */

@@ -1,0 +1,155 @@
+import { setImmediate } from 'node:timers/promises'
+import { type FastifyBaseLogger } from 'fastify'
+import { NotFlyable } from '../physics/notFlyable.ts'
+import { type AirSource } from '../planning/airSource.ts'
+import { type ProfileRow } from '../store/profiles.ts'
+import { type Store } from '../store/store.ts'
+import { type WatchRow } from '../store/watches.ts'
+import { type Airs } from './airs.ts'
+import { storedPlan, storedRun } from './flightAnswer.ts'
+import { flyRun } from './flying.ts'
+import { keepFailure, keepRun } from './keeping.ts'
+import { Problem } from './problems.ts'
+import { type AirReference, type Plan } from './schemas/plan.ts'
+import { type Run } from './schemas/run.ts'
+import { seconds } from './units.ts'
+import { betterAir, covers } from './watchedAir.ts'
+
+/** No flight lasts longer than this, s: one released earlier is over. */
+const LONGEST_FLIGHT = 86_400
+
+interface Candidate {
+  air: AirReference
+  source: AirSource
+}
+
+/**
+ * Flies watched flights again in newer air that covers them. What is due stands in the database from the
+ * transaction that stored the air, so nothing is lost with a killed process.
+ */
+export class Watcher {
+  private readonly store: Store
+  private readonly airs: Airs
+  private readonly log: FastifyBaseLogger
+  private working: Promise<void> | undefined
+  private stopped = false
+
+  constructor(store: Store, airs: Airs, log: FastifyBaseLogger) {
+    this.store = store
+    this.airs = airs
+    this.log = log
+  }
+
+  /** Makes the watched flights due that a sounding may cover; call it in the transaction that stores it. */
+  arrived({ id, validAt, latitude }: ProfileRow): void {
+    if (validAt === null || latitude === null) return // nobody can say what it covers
+    const air: AirReference = { kind: 'profile', id }
+    const due = this.store.watches.arrive({
+      air: JSON.stringify(air),
+      validFrom: validAt,
+      validTo: validAt,
+      releasedAfter: Date.now() / 1000 - LONGEST_FLIGHT,
+    })
+    if (due > 0) this.wake()
+  }
+
+  /** Starts on what is due, unless that is under way. */
+  wake(): void {
+    if (this.stopped) return
+    this.working ??= this.work().finally(() => (this.working = undefined))
+  }
+
+  /** Finishes the flight in hand and stops. */
+  async close(): Promise<void> {
+    this.stopped = true
+    await this.working
+  }
+
+  private async work(): Promise<void> {
+    await setImmediate() // what woke this commits first, and answers
+    for (;;) {
+      const flightId = this.store.watches.due()
+      if (flightId === undefined || this.stopped) return
+      try {
+        await this.settle(flightId)
+      } catch (error) {
+        this.log.error({ err: error, flightId }, 'a watched flight could not be flown again')
+        if (!(await this.giveUp(flightId, error))) return // due again at the next arrival or start
+      }
+    }
+  }
+
+  /** Flies one flight in the best of the airs due for it that betters its last, and strikes them all off. */
+  private async settle(flightId: string): Promise<void> {
+    const due = this.store.watches.airsDue(flightId)
+    const flight = this.store.flights.get(flightId)
+    const watch = this.store.watches.get(flightId)
+    if (!flight || !watch) return
+    const plan = storedPlan(flight)
+    const latest = storedRun(flight.latestAnswer)
+    const open = flight.outcome === null && seconds(latest.landing.time) > Date.now() / 1000
+    const keep = open ? this.flyBest(watch, plan, latest, due) : () => undefined
+    await this.store.commit(() => {
+      this.store.watches.settle(flightId, due)
+      if (this.store.watches.get(flightId)) keep() // it may have been deleted meanwhile
+    })
+  }
+
+  /** Strikes off what cannot be tried, so that other flights get their turn; false where even that fails. */
+  private async giveUp(flightId: string, error: unknown): Promise<boolean> {
+    try {
+      await this.store.commit(() => {
+        const due = this.store.watches.airsDue(flightId)
+        const watch = this.store.watches.get(flightId)
+        for (const air of due) {
+          if (watch) keepFailure(this.store, watch, JSON.parse(air) as AirReference, error)
+        }
+        this.store.watches.settle(flightId, due)
+      })
+      return true
+    } catch {
+      return false
+    }
+  }
+
+  /** Flies a plan in the best air that it can be flown in; the function returned stores what came of it. */
+  private flyBest(watch: WatchRow, plan: Plan, latest: Run, due: readonly string[]): () => void {
+    const flown = this.flownAir(latest)
+    const better = due
+      .flatMap((json) => this.candidate(JSON.parse(json) as AirReference))
+      .filter(({ source }) => covers(source, plan, watch) && betterAir(source, flown, plan))
+      .sort((a, b) => (betterAir(a.source, b.source, plan) ? -1 : 1))
+    const keep: (() => void)[] = []
+    for (const { air } of better) {
+      try {
+        const made = flyRun(watch.flightId, { ...plan, air }, latest, this.airs)
+        keep.push(() => {
+          keepRun(this.store, made)
+        })
+        break
+      } catch (error) {
+        if (!(error instanceof NotFlyable)) throw error
+        keep.push(() => {
+          keepFailure(this.store, watch, air, error)
+        })
+      }
+    }
+    return () => {
+      for (const one of keep) one()
+    }
+  }
+
+  /** Air that is due; none where it was deleted meanwhile. */
+  private candidate(air: AirReference): Candidate[] {
+    try {
+      return [{ air, source: this.airs.source(air) }]
+    } catch (error) {
+      if (error instanceof Problem) return []
+      throw error
+    }
+  }
+
+  private flownAir({ plan }: Run): AirSource {
+    return this.airs.source(plan.air) // what a run flew in is kept with it
+  }
+}
