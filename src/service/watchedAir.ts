@@ -10,6 +10,12 @@ export interface Nearness {
   withinTime: number
 }
 
+/** How little some air has to do with a release, s, and its id, by which a later issue is known. */
+export interface Remoteness {
+  id: string | null
+  age: number
+}
+
 /**
  * Air this far away counts as much as air a second older: it is carried along by the wind, here of
  * 15 m/s (Taylor's hypothesis; the speed is an assumption).
@@ -31,15 +37,15 @@ export function covers(source: AirSource, plan: Plan, near: Nearness): boolean {
   return distance <= near.within && time <= near.withinTime
 }
 
-/** How little the air has to do with a release, s: its age there, its distance turned to age. */
-export function remoteness(source: AirSource, plan: Plan): number {
+/** How little air has to do with a release: its age there, with its distance turned to age. */
+export function remoteness(source: AirSource, plan: Plan): Remoteness {
   const { distance, time } = gaps(source, plan)
-  return time + distance / CARRIED
+  return { id: source.id, age: time + distance / CARRIED }
 }
 
-/** Whether air is better for a flight than the air it flew in: nearer, or a later issue of the same. */
-export function betterAir(source: AirSource, flown: AirSource, plan: Plan): boolean {
-  const nearer = remoteness(flown, plan) - remoteness(source, plan)
+/** Whether air is better for a flight than other air: less remote, or a later issue of the same. */
+export function isBetter(one: Remoteness, other: Remoteness): boolean {
+  const nearer = other.age - one.age
   if (Math.abs(nearer) > 1e-6) return nearer > 0 // NaN, both infinite, is not
-  return source.id !== null && flown.id !== null && source.id > flown.id
+  return one.id !== null && other.id !== null && one.id > other.id
 }

@@ -1,7 +1,6 @@
 import { setImmediate } from 'node:timers/promises'
 import { type FastifyBaseLogger } from 'fastify'
 import { NotFlyable } from '../physics/notFlyable.ts'
-import { type AirSource } from '../planning/airSource.ts'
 import { type ProfileRow } from '../store/profiles.ts'
 import { type Store } from '../store/store.ts'
 import { type WatchRow } from '../store/watches.ts'
@@ -13,14 +12,14 @@ import { Problem } from './problems.ts'
 import { type AirReference, type Plan } from './schemas/plan.ts'
 import { type Run } from './schemas/run.ts'
 import { seconds } from './units.ts'
-import { betterAir, covers } from './watchedAir.ts'
+import { covers, isBetter, remoteness, type Remoteness } from './watchedAir.ts'
 
 /** No flight lasts longer than this, s: one released earlier is over. */
 const LONGEST_FLIGHT = 86_400
 
 interface Candidate {
   air: AirReference
-  source: AirSource
+  remoteness: Remoteness
 }
 
 /**
@@ -114,11 +113,11 @@ export class Watcher {
 
   /** Flies a plan in the best air that it can be flown in; the function returned stores what came of it. */
   private flyBest(watch: WatchRow, plan: Plan, latest: Run, due: readonly string[]): () => void {
-    const flown = this.flownAir(latest)
+    const flown = remoteness(this.airs.source(latest.plan.air), plan) // kept as long as its run
     const better = due
-      .flatMap((json) => this.candidate(JSON.parse(json) as AirReference))
-      .filter(({ source }) => covers(source, plan, watch) && betterAir(source, flown, plan))
-      .sort((a, b) => (betterAir(a.source, b.source, plan) ? -1 : 1))
+      .flatMap((json) => this.candidate(JSON.parse(json) as AirReference, plan, watch))
+      .filter((candidate) => isBetter(candidate.remoteness, flown))
+      .sort((a, b) => (isBetter(a.remoteness, b.remoteness) ? -1 : 1))
     const keep: (() => void)[] = []
     for (const { air } of better) {
       try {
@@ -139,17 +138,14 @@ export class Watcher {
     }
   }
 
-  /** Air that is due; none where it was deleted meanwhile. */
-  private candidate(air: AirReference): Candidate[] {
+  /** Air that is due, if it covers the flight; none where it was deleted meanwhile. */
+  private candidate(air: AirReference, plan: Plan, watch: WatchRow): Candidate[] {
     try {
-      return [{ air, source: this.airs.source(air) }]
+      const source = this.airs.source(air)
+      return covers(source, plan, watch) ? [{ air, remoteness: remoteness(source, plan) }] : []
     } catch (error) {
       if (error instanceof Problem) return []
       throw error
     }
-  }
-
-  private flownAir({ plan }: Run): AirSource {
-    return this.airs.source(plan.air) // what a run flew in is kept with it
   }
 }
