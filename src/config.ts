@@ -11,6 +11,7 @@ const environmentSchema = z.object({
     .refine((port) => port <= 65_535, 'must be a whole number from 0 to 65535')
     .default(8080),
   DATABASE_FILE: z.string().min(1).default('driftbook.sqlite'),
+  FIELD_DIRECTORY: z.string().min(1).optional(),
   LOG_LEVEL: z.enum(['trace', 'debug', 'info', 'warn', 'error', 'fatal', 'silent']).default('info'),
   DEMO: z.enum(['on', 'off']).default('on'),
   TILES: z
@@ -30,6 +31,8 @@ export interface Config {
   /** 0 lets the system choose */
   port: number
   databaseFile: string
+  /** Folder of the forecasts' values */
+  fieldDirectory: string
   logLevel: z.output<typeof environmentSchema>['LOG_LEVEL']
   /** Whether an empty database gets the demo flight */
   demo: boolean
@@ -50,11 +53,13 @@ export function readConfig(environment: NodeJS.ProcessEnv): Config {
     })
     throw new Error(`The environment is malformed. ${faults.join('. ')}`)
   }
-  const { HOST, PORT, DATABASE_FILE, LOG_LEVEL, DEMO, TILES, TILES_ATTRIBUTION } = result.data
+  const { HOST, PORT, DATABASE_FILE, FIELD_DIRECTORY, LOG_LEVEL, DEMO, TILES, TILES_ATTRIBUTION } =
+    result.data
   return {
     host: HOST,
     port: PORT,
     databaseFile: DATABASE_FILE,
+    fieldDirectory: FIELD_DIRECTORY ?? `${DATABASE_FILE}-fields`,
     logLevel: LOG_LEVEL,
     demo: DEMO === 'on',
     tiles: TILES === undefined ? null : tileSetting(TILES, TILES_ATTRIBUTION),

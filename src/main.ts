@@ -14,7 +14,11 @@ async function start(): Promise<void> {
   // People read standard output; the log goes to standard error.
   const logger = pino({ level: config.logLevel }, pino.destination(2))
   const store = new Store(config.databaseFile, MIGRATIONS)
-  const app = await buildApp(store, logger, { warmPlanning: true, tiles })
+  const app = await buildApp(store, logger, {
+    warmPlanning: true,
+    tiles,
+    fieldDirectory: config.fieldDirectory,
+  })
 
   const stop = async () => {
     await app.close()

@@ -6,6 +6,7 @@ test('nothing set is the documented default', () => {
     host: '127.0.0.1',
     port: 8080,
     databaseFile: 'driftbook.sqlite',
+    fieldDirectory: 'driftbook.sqlite-fields',
     logLevel: 'info',
     demo: true,
     tiles: null,
@@ -17,6 +18,7 @@ test('every variable is read', () => {
     HOST: '0.0.0.0',
     PORT: '9000',
     DATABASE_FILE: '/data/a.sqlite',
+    FIELD_DIRECTORY: '/data/forecasts',
     LOG_LEVEL: 'warn',
     DEMO: 'off',
     TILES: 'https://tiles.example/{z}/{x}/{y}.png?key=1',
@@ -26,6 +28,7 @@ test('every variable is read', () => {
     host: '0.0.0.0',
     port: 9000,
     databaseFile: '/data/a.sqlite',
+    fieldDirectory: '/data/forecasts',
     logLevel: 'warn',
     demo: false,
     tiles: {

@@ -2,6 +2,7 @@ import accepts from '@fastify/accepts'
 import helmet from '@fastify/helmet'
 import swagger from '@fastify/swagger'
 import swaggerUi from '@fastify/swagger-ui'
+import { Readable } from 'node:stream'
 import fastify, { type FastifyBaseLogger, type FastifyInstance } from 'fastify'
 import { type z } from 'zod'
 import { PlanningPool } from '../planning/pool.ts'
@@ -11,10 +12,12 @@ import { acceptJson } from './bodies.ts'
 import { type App, type Context } from './context.ts'
 import { dispersionWork } from './dispersions.ts'
 import { JobRunner } from './jobRunner.ts'
+import { FieldFiles } from './fieldFiles.ts'
 import { describeRoute, describeSchemas, openApiInfo } from './openApi.ts'
 import { servePage } from './page.ts'
 import { answerError, faultyRequest, notThere, sendProblem } from './problems.ts'
 import { dispersionRoutes } from './routes/dispersions.ts'
+import { fieldRoutes } from './routes/fields.ts'
 import { fillRoutes } from './routes/fills.ts'
 import { flightRoutes } from './routes/flights.ts'
 import { healthRoutes } from './routes/health.ts'
@@ -62,6 +65,10 @@ export interface AppOptions {
   warmPlanning?: boolean
   /** What the page's map is drawn on; its own coasts alone unless given */
   tiles?: TileSource | null
+  /** Folder of the forecasts' values; beside the database unless given */
+  fieldDirectory?: string
+  /** Longest forecast that is taken, bytes */
+  fieldUploadLimit?: number
 }
 
 /** Builds the service on a store; it is not listening yet. */
@@ -77,7 +84,7 @@ export async function buildApp(
   })
 
   app.setValidatorCompiler(({ schema, httpPart }) => (data: unknown) => {
-    if (Buffer.isBuffer(data)) return { value: data } // an upload: its reader checks it
+    if (Buffer.isBuffer(data) || data instanceof Readable) return { value: data } // an upload: its reader checks it
     const result = (schema as unknown as z.ZodType).safeParse(data, { reportInput: true })
     if (result.success) return { value: result.data }
     return { error: faultyRequest(400, schemaFaults(result.error, httpPart)) }
@@ -99,16 +106,22 @@ export async function buildApp(
   await app.register(swaggerUi, { routePrefix: '/docs' })
 
   // The routes
-  const airs = new Airs(store.profiles)
+  const fieldDirectory = options.fieldDirectory ?? `${store.file}-fields`
+  const fieldFiles = new FieldFiles(fieldDirectory, store.fields, options.fieldUploadLimit)
+  const airs = new Airs(store.profiles, store.fields, (id) => fieldFiles.path(id))
   const pool = new PlanningPool()
   const jobs = new JobRunner(store, {
     dispersion: dispersionWork(airs, pool),
     windows: windowsWork(airs, pool),
   })
   app.addHook('preClose', () => jobs.close())
-  app.addHook('onClose', () => pool.close())
+  app.addHook('onClose', async () => {
+    await pool.close()
+    await fieldFiles.close()
+    airs.close()
+  })
   if (options.warmPlanning) app.addHook('onListen', () => warmUp(pool))
-  const context: Context = { store, airs, jobs }
+  const context: Context = { store, airs, jobs, fieldFiles }
   const typed = app as unknown as App
   flightRoutes(typed, context)
   runRoutes(typed, context)
@@ -122,6 +135,10 @@ export async function buildApp(
   jobRoutes(typed, context)
   await app.register((scope) => {
     profileRoutes(scope, context)
+    return Promise.resolve()
+  })
+  await app.register((scope) => {
+    fieldRoutes(scope, context)
     return Promise.resolve()
   })
   healthRoutes(typed, context)

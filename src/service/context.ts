@@ -9,6 +9,7 @@ import {
 import { type z } from 'zod'
 import { type Store } from '../store/store.ts'
 import { type Airs } from './airs.ts'
+import { type FieldFiles } from './fieldFiles.ts'
 import { type JobRunner } from './jobRunner.ts'
 
 /** What the routes work with. */
@@ -16,6 +17,7 @@ export interface Context {
   store: Store
   airs: Airs
   jobs: JobRunner
+  fieldFiles: FieldFiles
 }
 
 /** Requests have the types of their schemas; answers are checked against theirs by the tests. */

@@ -1,4 +1,5 @@
 import type Database from 'better-sqlite3'
+import { Fields } from './fields.ts'
 import { FirstAnswers } from './firstAnswers.ts'
 import { Flights } from './flights.ts'
 import { GroupCommit } from './groupCommit.ts'
@@ -12,18 +13,23 @@ export class Store {
   readonly flights: Flights
   readonly runs: Runs
   readonly profiles: Profiles
+  readonly fields: Fields
   readonly firstAnswers: FirstAnswers
   readonly jobs: Jobs
+  /** The database file */
+  readonly file: string
   private readonly database: Database.Database
   private readonly group: GroupCommit
 
   /** Opens the database `file`, applying what is new in the folder `migrations`. */
   constructor(file: string, migrations: string) {
+    this.file = file
     this.database = openDatabase(file, migrations)
     this.group = new GroupCommit(this.database)
     this.flights = new Flights(this.database)
     this.runs = new Runs(this.database)
     this.profiles = new Profiles(this.database)
+    this.fields = new Fields(this.database)
     this.firstAnswers = new FirstAnswers(this.database)
     this.jobs = new Jobs(this.database)
   }
