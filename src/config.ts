@@ -11,8 +11,10 @@ const environmentSchema = z.object({
     .refine((port) => port <= 65_535, 'must be a whole number from 0 to 65535')
     .default(8080),
   DATABASE_FILE: z.string().min(1).default('driftbook.sqlite'),
+  FIELD_DIRECTORY: z.string().min(1).optional(),
   LOG_LEVEL: z.enum(['trace', 'debug', 'info', 'warn', 'error', 'fatal', 'silent']).default('info'),
   DEMO: z.enum(['on', 'off']).default('on'),
+  SOURCES_FILE: z.string().min(1).optional(),
   WEBHOOKS: z.enum(['off', 'public', 'on']).default('off'),
   TILES: z
     .string()
@@ -31,9 +33,13 @@ export interface Config {
   /** 0 lets the system choose */
   port: number
   databaseFile: string
+  /** Folder of the forecasts' values */
+  fieldDirectory: string
   logLevel: z.output<typeof environmentSchema>['LOG_LEVEL']
   /** Whether an empty database gets the demo flight */
   demo: boolean
+  /** Describes the sources that forecasts are fetched from; null: none are */
+  sourcesFile: string | null
   /** Whether webhooks are posted: not at all, to public addresses only, or to any address */
   webhooks: 'off' | 'public' | 'on'
   /** What the page's map is drawn on; null: its own coasts alone */
@@ -53,13 +59,15 @@ export function readConfig(environment: NodeJS.ProcessEnv): Config {
     })
     throw new Error(`The environment is malformed. ${faults.join('. ')}`)
   }
-  const { HOST, PORT, DATABASE_FILE, LOG_LEVEL, DEMO, ...rest } = result.data
+  const { HOST, PORT, DATABASE_FILE, FIELD_DIRECTORY, LOG_LEVEL, DEMO, ...rest } = result.data
   return {
     host: HOST,
     port: PORT,
     databaseFile: DATABASE_FILE,
+    fieldDirectory: FIELD_DIRECTORY ?? `${DATABASE_FILE}-fields`,
     logLevel: LOG_LEVEL,
     demo: DEMO === 'on',
+    sourcesFile: rest.SOURCES_FILE ?? null,
     webhooks: rest.WEBHOOKS,
     tiles: rest.TILES === undefined ? null : tileSetting(rest.TILES, rest.TILES_ATTRIBUTION),
   }

@@ -1,6 +1,7 @@
 import { pino } from 'pino'
 import { readConfig } from './config.ts'
 import { addDemo, demoTable } from './demo.ts'
+import { readSources } from './fetching/sourceSettings.ts'
 import { buildApp } from './service/app.ts'
 import { openTiles } from './service/tiles.ts'
 import { Store } from './store/store.ts'
@@ -20,7 +21,9 @@ async function start(): Promise<void> {
   const app = await buildApp(store, logger, {
     warmPlanning: true,
     webhooks: config.webhooks,
+    sources: config.sourcesFile === null ? [] : readSources(config.sourcesFile),
     tiles,
+    fieldDirectory: config.fieldDirectory,
   })
 
   const stop = async () => {

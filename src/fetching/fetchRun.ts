@@ -9,6 +9,9 @@ import { FetchError } from './fetchError.ts'
 import { wantedRanges, type WantedRanges } from './fileIndex.ts'
 import { sourceUrl, type SourceSettings } from './sourceSettings.ts'
 
+/** Sections 0, 1 and 8 of a message take this much, bytes. */
+const SHORTEST = 16 + 21 + 4
+
 /** A file that comes damaged, or changes underway, is begun anew so often. */
 const BEGINNINGS = 3
 
@@ -52,7 +55,7 @@ async function fetchStep(
   for (let beginning = 1; ; beginning++) {
     try {
       const messages = await download(source, runTime, step, part, asking)
-      await checkMessages(part, messages)
+      await checkMessages(part, messages, runTime)
       await rename(part, file)
       return
     } catch (error) {
@@ -92,8 +95,12 @@ async function download(
   }
 }
 
-/** Every message must stand whole from its "GRIB" to its "7777", and none may be missing. */
-async function checkMessages(part: string, expected: number | null): Promise<void> {
+/** Every message must stand whole from its "GRIB" to its "7777" and be of the run; none may be missing. */
+async function checkMessages(
+  part: string,
+  expected: number | null,
+  runTime: number,
+): Promise<void> {
   let found = 0
   let end = 0
   try {
@@ -102,8 +109,13 @@ async function checkMessages(part: string, expected: number | null): Promise<voi
         throw new FetchError(`the index does not fit the file: no message at byte ${end}`, 'anew')
       }
       end = offset + bytes.length
-      if (edition !== 2) {
-        throw new FetchError(`the message at byte ${offset} is of edition ${edition}`, 'anew')
+      if (edition !== 2 || bytes.length < SHORTEST) {
+        throw new FetchError(`the message at byte ${offset} is none of edition 2`, 'anew')
+      }
+      const reference = referenceTime(bytes)
+      if (reference !== runTime) {
+        const run = new Date(reference * 1000).toISOString()
+        throw new FetchError(`the message at byte ${offset} is of the run ${run}`, 'anew')
       }
       found++
     }
@@ -114,4 +126,18 @@ async function checkMessages(part: string, expected: number | null): Promise<voi
   if (expected !== null && found !== expected) {
     throw new FetchError(`${found} messages came where ${expected} are wanted`, 'anew')
   }
+}
+
+/** Section 1, octets 13 to 19: when the forecast's run began, s since 1970 UTC (WMO FM 92). */
+function referenceTime(message: Uint8Array): number {
+  const view = new DataView(message.buffer, message.byteOffset + 16 + 12)
+  const time = Date.UTC(
+    view.getUint16(0),
+    view.getUint8(2) - 1,
+    view.getUint8(3),
+    view.getUint8(4),
+    view.getUint8(5),
+    view.getUint8(6),
+  )
+  return time / 1000
 }

@@ -10,8 +10,8 @@ import { newestRun, nextAvailable, type SourceSettings } from './sourceSettings.
 
 /** Where fetched messages become a field. */
 export interface FieldShelf {
-  /** Stores messages as one field, whole or not at all; `bytes` is what it takes on the disk. */
-  store: (chunks: AsyncIterable<Uint8Array>) => Promise<{ id: string; bytes: number }>
+  /** Stores messages as one named field, whole or not at all; `bytes` is what it takes on the disk. */
+  store: (chunks: AsyncIterable<Uint8Array>, name: string) => Promise<{ id: string; bytes: number }>
   /** Removes a field; false where something still uses it. */
   remove: (id: string) => Promise<boolean>
 }
@@ -156,7 +156,9 @@ export class Fetcher {
     try {
       const asking = { patience: this.patience, signal, spend }
       const files = await fetchRun(source, row.runTime, folder, asking)
-      const { id, bytes } = await this.shelf.store(bytesOf(files))
+      const run = new Date(row.runTime * 1000).toISOString().replace(':00.000Z', 'Z')
+      const name = `${source.name}, run of ${run}`
+      const { id, bytes } = await this.shelf.store(bytesOf(files), name)
       await rm(folder, { recursive: true, force: true })
       end = { state: 'stored', fieldId: id, bytes }
     } catch (error) {

@@ -32,6 +32,8 @@ export interface WindDeparture {
  */
 export class Column {
   readonly air: ColumnAir
+  /** What a load comes down in: this column unless another was given, of the same slabs. */
+  readonly descent: Column
   readonly thickness: number
   /** Number of slabs; slab k lies between edges k and k + 1. */
   readonly count: number
@@ -56,8 +58,9 @@ export class Column {
   private riseTable: RiseTable | undefined
   private bendTable: Bends | undefined
 
-  constructor(air: ColumnAir, thickness = SLAB_THICKNESS) {
+  constructor(air: ColumnAir, thickness = SLAB_THICKNESS, descent?: Column) {
     this.air = air
+    this.descent = descent ?? this
     this.thickness = thickness
     this.count = Math.round((CEILING - COLUMN_BASE) / thickness)
     const { count } = this

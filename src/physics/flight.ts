@@ -90,7 +90,7 @@ export function fly(plan: FlightPlan, column: Column, recorder?: PathRecorder): 
       ascend(balloon, column, at, end, recorder)
     },
     descend(load, burstRate, landingAltitude, at, end) {
-      descend(load, burstRate, landingAltitude, column, at, end, recorder)
+      descend(load, burstRate, landingAltitude, column.descent, at, end, recorder)
     },
   })
 }

@@ -1,5 +1,5 @@
 import { type AirRecipe } from './airRecipe.ts'
-import { type AirSource } from './airSource.ts'
+import { type AirSource, type ColumnSource } from './airSource.ts'
 
 /** The air of one release time, and where it comes from. */
 export interface AirOfTime {
@@ -16,7 +16,7 @@ export interface AirOfTime {
  * them, or where `how` is nearest, the nearest. Several airs must each have a time of their own.
  */
 export function airOfTime(
-  sources: readonly AirSource[],
+  sources: readonly ColumnSource[],
   time: number,
   how: 'interpolated' | 'nearest',
 ): AirOfTime {
@@ -48,19 +48,19 @@ export function airOfTime(
 }
 
 interface Timed {
-  source: AirSource
+  source: ColumnSource
   at: number
 }
 
-function latest(sources: readonly AirSource[]): Timed | undefined {
+function latest(sources: readonly ColumnSource[]): Timed | undefined {
   return timed(sources).at(-1)
 }
 
-function earliest(sources: readonly AirSource[]): Timed | undefined {
+function earliest(sources: readonly ColumnSource[]): Timed | undefined {
   return timed(sources).at(0)
 }
 
-function timed(sources: readonly AirSource[]): Timed[] {
+function timed(sources: readonly ColumnSource[]): Timed[] {
   return sources
     .flatMap((source) => (source.validAt === null ? [] : [{ source, at: source.validAt }]))
     .sort((a, b) => a.at - b.at)

@@ -10,6 +10,7 @@ export type AirRecipe =
   | { kind: 'standard' }
   | { kind: 'profile'; id: string; levels: readonly SoundingLevel[] }
   | { kind: 'between'; earlier: AirRecipe; later: AirRecipe; share: number }
+  | { kind: 'legs'; ascent: AirRecipe; descent: AirRecipe }
 
 /** The same key for the same air. */
 export function recipeKey(recipe: AirRecipe): string {
@@ -20,12 +21,15 @@ export function recipeKey(recipe: AirRecipe): string {
       return recipe.id
     case 'between':
       return `${recipeKey(recipe.earlier)}>${recipe.share}>${recipeKey(recipe.later)}`
+    case 'legs':
+      return `${recipeKey(recipe.ascent)}/${recipeKey(recipe.descent)}`
   }
 }
 
 /** Tabulates the air of a recipe. */
 export function columnOf(recipe: AirRecipe): Column {
-  return new Column(airOf(recipe))
+  if (recipe.kind !== 'legs') return new Column(airOf(recipe))
+  return new Column(airOf(recipe.ascent), undefined, columnOf(recipe.descent))
 }
 
 function airOf(recipe: AirRecipe): ColumnAir {
@@ -36,5 +40,7 @@ function airOf(recipe: AirRecipe): ColumnAir {
       return new ProfileAir(recipe.levels)
     case 'between':
       return new BlendedAir(airOf(recipe.earlier), airOf(recipe.later), recipe.share)
+    case 'legs':
+      return airOf(recipe.ascent)
   }
 }

@@ -1,7 +1,7 @@
 import { type AltitudeSpan } from '../physics/air.ts'
 import { dragCurve } from '../physics/dragCurves.ts'
 import { type Flight, type FlightPlan } from '../physics/flight.ts'
-import { type AirSource } from './airSource.ts'
+import { type ColumnSource } from './airSource.ts'
 import { geodesicLine } from './geodesic.ts'
 
 /** Something that weakens a prediction, or that whoever acts on it must heed. */
@@ -22,6 +22,12 @@ export type CautionCode =
   | 'below-sounding'
   | 'air-of-another-time'
   | 'air-of-another-place'
+  | 'beyond-forecast-grid'
+  | 'beyond-forecast-times'
+  | 'above-forecast'
+  | 'below-forecast'
+  | 'far-ahead-forecast'
+  | 'members-along-flight'
   | 'drag-beyond-fit'
   | 'slow-release'
   | 'hard-landing'
@@ -47,7 +53,7 @@ export const airspaceNotification: Caution = {
 }
 
 /** What to heed in a predicted flight, the standing line first. */
-export function cautionsFor(plan: FlightPlan, flight: Flight, source: AirSource): Caution[] {
+export function cautionsFor(plan: FlightPlan, flight: Flight, source: ColumnSource): Caution[] {
   return [
     airspaceNotification,
     ...airCautions(plan, flight, source),
@@ -56,7 +62,7 @@ export function cautionsFor(plan: FlightPlan, flight: Flight, source: AirSource)
   ]
 }
 
-function* airCautions(plan: FlightPlan, flight: Flight, source: AirSource): Iterable<Caution> {
+function* airCautions(plan: FlightPlan, flight: Flight, source: ColumnSource): Iterable<Caution> {
   if (source.kind === 'standard') {
     yield {
       code: 'still-air',
@@ -99,7 +105,7 @@ function* airCautions(plan: FlightPlan, flight: Flight, source: AirSource): Iter
   }
 }
 
-function* sourceCautions(plan: FlightPlan, source: AirSource): Iterable<Caution> {
+function* sourceCautions(plan: FlightPlan, source: ColumnSource): Iterable<Caution> {
   if (source.validAt !== null) {
     const age = plan.launch.time - source.validAt
     if (Math.abs(age) > FRESH_AIR) {
@@ -122,7 +128,8 @@ function* sourceCautions(plan: FlightPlan, source: AirSource): Iterable<Caution>
   }
 }
 
-function* flightCautions(plan: FlightPlan, flight: Flight): Iterable<Caution> {
+/** What to heed in a flight, whatever air it was flown in. */
+export function* flightCautions(plan: FlightPlan, flight: Flight): Iterable<Caution> {
   const { fitted } = dragCurve(plan.drag)
   const { lowestReynolds, highestReynolds, releaseRate } = flight.ascent
   if (lowestReynolds < fitted.from || highestReynolds > fitted.to) {

@@ -167,7 +167,16 @@ export class MemberFlights {
     }
     if (!(at.altitude > plan.landingAltitude)) return false
     this.burstAltitude = at.altitude
-    descend(load, ascent.burstRate, plan.landingAltitude, column, at, descent, undefined, departure)
+    descend(
+      load,
+      ascent.burstRate,
+      plan.landingAltitude,
+      column.descent,
+      at,
+      descent,
+      undefined,
+      departure,
+    )
     return true
   }
 }

@@ -1,10 +1,14 @@
+import { join } from 'node:path'
+import { Readable } from 'node:stream'
 import accepts from '@fastify/accepts'
 import helmet from '@fastify/helmet'
 import swagger from '@fastify/swagger'
 import swaggerUi from '@fastify/swagger-ui'
 import fastify, { type FastifyBaseLogger, type FastifyInstance } from 'fastify'
 import { type z } from 'zod'
-import { type Fetcher } from '../fetching/fetcher.ts'
+import { type Patience } from '../fetching/download.ts'
+import { Fetcher } from '../fetching/fetcher.ts'
+import { type SourceSettings } from '../fetching/sourceSettings.ts'
 import { PlanningPool } from '../planning/pool.ts'
 import { type Store } from '../store/store.ts'
 import { Airs } from './airs.ts'
@@ -13,11 +17,14 @@ import { type App, type Context } from './context.ts'
 import { dispersionWork } from './dispersions.ts'
 import { EventStreams } from './eventStreams.ts'
 import { JobRunner } from './jobRunner.ts'
+import { FieldFiles } from './fieldFiles.ts'
+import { fieldShelf } from './fieldShelf.ts'
 import { describeRoute, describeSchemas, openApiInfo } from './openApi.ts'
 import { servePage } from './page.ts'
 import { answerError, faultyRequest, notThere, sendProblem } from './problems.ts'
 import { dispersionRoutes } from './routes/dispersions.ts'
 import { eventRoutes } from './routes/events.ts'
+import { fieldRoutes } from './routes/fields.ts'
 import { fillRoutes } from './routes/fills.ts'
 import { flightRoutes } from './routes/flights.ts'
 import { healthRoutes } from './routes/health.ts'
@@ -70,10 +77,16 @@ export interface AppOptions {
   /** Off unless said otherwise: the service reaches out to nobody */
   webhooks?: WebhookMode
   webhookTiming?: Partial<WebhookTiming>
-  /** Fetches forecasts from the sources that an operator configured; none unless given */
-  fetcher?: Fetcher | null
+  /** Where forecasts are fetched from; nowhere unless given */
+  sources?: readonly SourceSettings[]
+  /** How patiently sources are asked */
+  patience?: Patience
   /** What the page's map is drawn on; its own coasts alone unless given */
   tiles?: TileSource | null
+  /** Folder of the forecasts' values; beside the database unless given */
+  fieldDirectory?: string
+  /** Longest forecast that is taken, bytes */
+  fieldUploadLimit?: number
 }
 
 /** Builds the service on a store; it is not listening yet. */
@@ -89,7 +102,7 @@ export async function buildApp(
   })
 
   app.setValidatorCompiler(({ schema, httpPart }) => (data: unknown) => {
-    if (Buffer.isBuffer(data)) return { value: data } // an upload: its reader checks it
+    if (Buffer.isBuffer(data) || data instanceof Readable) return { value: data } // an upload: its reader checks it
     const result = (schema as unknown as z.ZodType).safeParse(data, { reportInput: true })
     if (result.success) return { value: result.data }
     return { error: faultyRequest(400, schemaFaults(result.error, httpPart)) }
@@ -111,29 +124,41 @@ export async function buildApp(
   await app.register(swaggerUi, { routePrefix: '/docs' })
 
   // The routes
-  const airs = new Airs(store.profiles)
+  const fieldDirectory = options.fieldDirectory ?? `${store.file}-fields`
+  const fieldFiles = new FieldFiles(fieldDirectory, store.fields, options.fieldUploadLimit)
+  const airs = new Airs(store.profiles, store.fields, (id) => fieldFiles.path(id))
   const pool = new PlanningPool()
   const jobs = new JobRunner(store, {
     dispersion: dispersionWork(airs, pool),
     windows: windowsWork(airs, pool),
   })
   const streams = new EventStreams()
-  const watcher = new Watcher(store, airs, app.log)
+  const watcher = new Watcher(store, airs, fieldFiles, app.log)
   const timing = { ...WEBHOOK_TIMING, ...options.webhookTiming }
   const webhooks = new Webhooks(store, options.webhooks ?? 'off', timing, app.log)
-  const fetcher = options.fetcher ?? null
+  const fetcher = new Fetcher(
+    options.sources ?? [],
+    store,
+    fieldShelf({ store, airs, fieldFiles, watcher }),
+    join(fieldDirectory, 'fetching'),
+    options.patience,
+  )
   app.addHook('onListen', () => {
-    fetcher?.start()
+    fetcher.start()
     watcher.wake() // what an earlier program left
     webhooks.wake()
   })
   app.addHook('preClose', async () => {
-    await Promise.all([fetcher?.close(), jobs.close(), watcher.close(), webhooks.close()])
+    await Promise.all([fetcher.close(), jobs.close(), watcher.close(), webhooks.close()])
     streams.close()
   })
-  app.addHook('onClose', () => pool.close())
+  app.addHook('onClose', async () => {
+    await pool.close()
+    await fieldFiles.close()
+    airs.close()
+  })
   if (options.warmPlanning) app.addHook('onListen', () => warmUp(pool))
-  const context: Context = { store, airs, jobs, streams, watcher, webhooks, fetcher }
+  const context: Context = { store, airs, jobs, fieldFiles, streams, watcher, webhooks, fetcher }
   const typed = app as unknown as App
   flightRoutes(typed, context)
   runRoutes(typed, context)
@@ -150,6 +175,10 @@ export async function buildApp(
   jobRoutes(typed, context)
   await app.register((scope) => {
     profileRoutes(scope, context)
+    return Promise.resolve()
+  })
+  await app.register((scope) => {
+    fieldRoutes(scope, context)
     return Promise.resolve()
   })
   healthRoutes(typed, context)

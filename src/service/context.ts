@@ -11,6 +11,7 @@ import { type Fetcher } from '../fetching/fetcher.ts'
 import { type Store } from '../store/store.ts'
 import { type Airs } from './airs.ts'
 import { type EventStreams } from './eventStreams.ts'
+import { type FieldFiles } from './fieldFiles.ts'
 import { type JobRunner } from './jobRunner.ts'
 import { type Watcher } from './watcher.ts'
 import { type Webhooks } from './webhooks.ts'
@@ -23,8 +24,8 @@ export interface Context {
   streams: EventStreams
   watcher: Watcher
   webhooks: Webhooks
-  /** null where no sources are configured */
-  fetcher: Fetcher | null
+  fetcher: Fetcher
+  fieldFiles: FieldFiles
 }
 
 /** Requests have the types of their schemas; answers are checked against theirs by the tests. */

@@ -1,3 +1,6 @@
+import { airAge } from '../planning/airSource.ts'
+import { membersAlongFlight } from '../planning/fieldCautions.ts'
+import { columnsAlong } from '../planning/fieldColumns.ts'
 import { type Summary } from '../planning/planningWorker.ts'
 import { type PlanningPool } from '../planning/pool.ts'
 import { predict } from '../planning/prediction.ts'
@@ -54,12 +57,16 @@ export function dispersionWork(airs: Airs, pool: PlanningPool): Work {
     const source = airs.source(plan.air)
     const flightPlan = toFlightPlan(plan)
     const nominal = predictionAnswer(predict(flightPlan, source), plan)
-    const age = source.validAt === null ? null : flightPlan.launch.time - source.validAt
+    if (source.kind === 'field') {
+      const { code, message } = membersAlongFlight
+      nominal.cautions.push({ code, message })
+    }
+    const age = airAge(source, flightPlan.launch.time)
     const spread = toSpread(planned.spread, flightPlan, age)
     const summary = await pool.disperse(
       {
         plan: flightPlan,
-        air: source.recipe,
+        air: source.kind === 'field' ? columnsAlong(flightPlan, source) : source.recipe,
         spread,
         members,
         seed,

@@ -1,5 +1,7 @@
 import { vapourPressure } from '../physics/air.ts'
 import { type FlightPlan } from '../physics/flight.ts'
+import { columnOf } from '../planning/airRecipe.ts'
+import { type AirSource } from '../planning/airSource.ts'
 import { cylindersFor } from '../planning/cylinders.ts'
 import {
   fillForTarget,
@@ -7,6 +9,8 @@ import {
   type TargetKind,
   type TradeOffRow,
 } from '../planning/fillForTarget.ts'
+import { columnOver, columnsAlong } from '../planning/fieldColumns.ts'
+import { type Column } from '../physics/column.ts'
 import { predict } from '../planning/prediction.ts'
 import { siteAir, weighIn, type Weighing, type WeighingAir } from '../planning/weighing.ts'
 import { type Airs } from './airs.ts'
@@ -38,12 +42,12 @@ export function fillAnswer(request: FillRequest, airs: Airs) {
   const { target, cylinder, weighing, ...rest } = request
   const unfilled = planOf({ ...rest, neckLiftG: 0 })
   const source = airs.source(unfilled.air)
-  const { neckLift, rows } = fillForTarget(toFlightPlan(unfilled), toTarget(target), source.column)
+  const { neckLift, rows, column } = fillIn(source, toFlightPlan(unfilled), toTarget(target))
   const plan = { ...unfilled, neckLiftG: round(neckLift * GRAMS, 3) }
   const flightPlan = toFlightPlan(plan)
   const prediction = predict(flightPlan, source)
-  const site = siteAir(flightPlan, source.column)
-  const weigh = (air: WeighingAir) => weighIn(air, flightPlan, source.column)
+  const site = siteAir(flightPlan, column)
+  const weigh = (air: WeighingAir) => weighIn(air, flightPlan, column)
   return {
     neckLiftG: plan.neckLiftG,
     plan,
@@ -59,6 +63,14 @@ export function fillAnswer(request: FillRequest, airs: Airs) {
       ...(weighing ? [weighingAnswer('given', weigh(givenAir(weighing, site)))] : []),
     ],
   }
+}
+
+/** The fill in the air of a source; in a forecast, in the air along the flight that it makes. */
+function fillIn(source: AirSource, plan: FlightPlan, target: FillTarget) {
+  const filled = (column: Column) => ({ ...fillForTarget(plan, target, column), column })
+  if (source.kind !== 'field') return filled(source.column)
+  const { neckLift } = filled(columnOf(columnOver(plan.launch, source)))
+  return filled(columnOf(columnsAlong({ ...plan, neckLift }, source)))
 }
 
 function toTarget(target: FillTargetRequest): FillTarget {

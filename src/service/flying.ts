@@ -2,7 +2,7 @@ import { v7 as uuid } from 'uuid'
 import { packTrack, unpackTrack } from '../exchange/trackRow.ts'
 import { predict } from '../planning/prediction.ts'
 import { type RunRow } from '../store/runs.ts'
-import { profileIdOf, type Airs } from './airs.ts'
+import { fieldIdOf, profileIdOf, type Airs } from './airs.ts'
 import { toFlightPlan } from './flightPlan.ts'
 import { shiftBetween, trialAnswer } from './runAnswer.ts'
 import { type Plan } from './schemas/plan.ts'
@@ -17,7 +17,7 @@ export interface FlownRun {
 
 /**
  * Flies a plan without storing anything.
- * @throws NotFlyable, or Problem where its air is not there
+ * @throws NotFlyable, OutsideField, or Problem where its air is not there
  */
 export function flyTrial(plan: Plan, airs: Airs, withTrack = false): Trial {
   const source = airs.source(plan.air)
@@ -31,7 +31,7 @@ export function flyTrial(plan: Plan, airs: Airs, withTrack = false): Trial {
 
 /**
  * Flies a plan for storing, compared with the flight's run before where there is one.
- * @throws NotFlyable, or Problem where its air is not there
+ * @throws NotFlyable, OutsideField, or Problem where its air is not there
  */
 export function flyRun(flightId: string, plan: Plan, before: Run | null, airs: Airs): FlownRun {
   const source = airs.source(plan.air)
@@ -47,6 +47,7 @@ export function flyRun(flightId: string, plan: Plan, before: Run | null, airs: A
     id: run.id,
     flightId,
     profileId: profileIdOf(plan.air),
+    fieldId: fieldIdOf(plan.air),
     answer: JSON.stringify(run),
     track: packTrack(prediction.track),
   }

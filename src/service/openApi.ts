@@ -23,6 +23,7 @@ export const openApiInfo = {
     { name: 'Jobs', description: 'Calculations that take longer than two seconds' },
     { name: 'Soundings', description: 'Uploaded profiles of the air' },
     { name: 'Sources', description: 'Where forecasts are fetched from' },
+    { name: 'Forecasts', description: 'Uploaded forecasts on a grid' },
     { name: 'Service', description: 'The service itself' },
   ],
 }

@@ -1,10 +1,13 @@
 import { STATUS_CODES } from 'node:http'
 import { type FastifyError, type FastifyReply, type FastifyRequest } from 'fastify'
+import { GribError, type GribProblem } from '../fields/gribError.ts'
+import { OutsideField } from '../fields/outsideField.ts'
 import { NotFlyable } from '../physics/notFlyable.ts'
 import { BadSounding } from '../soundings/badSounding.ts'
 import { UnreachableTarget } from '../planning/fillForTarget.ts'
 import { NoMemberFlies } from '../planning/pool.ts'
 import { describeNotFlyable } from './notFlyableAnswer.ts'
+import { describeOutside } from './outsideFieldAnswer.ts'
 import { describeUnreachable } from './unreachableAnswer.ts'
 
 /** One thing that is wrong, and where: a JSON pointer into the body, or `?name` of the query. */
@@ -73,6 +76,11 @@ function problemOf(error: FastifyError): Problem {
     return new Problem(422, fault.message, [fault])
   }
   if (error instanceof BadSounding) return soundingProblem(error)
+  if (error instanceof OutsideField) {
+    const fault = describeOutside(error)
+    return new Problem(422, fault.message, [fault])
+  }
+  if (error instanceof GribError) return gribProblem(error)
   if (error instanceof UnreachableTarget) return faultyRequest(422, [describeUnreachable(error)])
   if (error instanceof NoMemberFlies) {
     const message = 'is so wide that none of the members flies: narrow it'
@@ -98,4 +106,17 @@ function soundingProblem(error: BadSounding): Problem {
     message: line === undefined ? message : `line ${line}: ${message}`,
   }))
   return faultyRequest(error.unparseable ? 400 : 422, faults)
+}
+
+/** What a faulty forecast is answered with. */
+const GRIB_STATUS: Record<GribProblem, number> = {
+  'not-grib': 400,
+  truncated: 400,
+  damaged: 400,
+  'too-large': 413,
+  incomplete: 422,
+}
+
+function gribProblem({ problem, message }: GribError): Problem {
+  return faultyRequest(GRIB_STATUS[problem], [{ path: '', message }])
 }

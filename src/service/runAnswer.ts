@@ -78,7 +78,7 @@ export function trialAnswer(
     flightId: null,
     createdAt,
     modelVersion: MODEL_VERSION,
-    air: flownAir(source),
+    air: flownAir(source, seconds(plan.launch.time)),
     plan,
     ...predictionAnswer(prediction, plan),
     shift: null,
@@ -106,7 +106,17 @@ export function place(at: { latitudeDeg: number; longitudeDeg: number }) {
   return { latitude: at.latitudeDeg * DEGREE, longitude: at.longitudeDeg * DEGREE }
 }
 
-function flownAir(source: AirSource): Run['air'] {
+function flownAir(source: AirSource, release: number): Run['air'] {
+  if (source.kind === 'field') {
+    const { firstTime, lastTime } = source.field.file.coverage
+    return {
+      kind: source.kind,
+      id: source.id,
+      name: source.name,
+      validAt: isoTime(Math.min(lastTime, Math.max(firstTime, release))),
+      referenceTime: isoTime(source.referenceTime),
+    }
+  }
   return {
     kind: source.kind,
     ...(source.id === null ? {} : { id: source.id }),

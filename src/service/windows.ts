@@ -1,10 +1,16 @@
+import { type AirRecipe } from '../planning/airRecipe.ts'
+import { type FlightPlan } from '../physics/flight.ts'
 import { NotFlyable } from '../physics/notFlyable.ts'
+import { setImmediate } from 'node:timers/promises'
+import { OutsideField } from '../fields/outsideField.ts'
 import { airOfTime, type AirOfTime } from '../planning/airOfTime.ts'
-import { type AirSource } from '../planning/airSource.ts'
+import { airAge, type AirSource, type ColumnSource } from '../planning/airSource.ts'
 import { airspaceNotification, type Caution } from '../planning/cautions.ts'
+import { membersAlongFlight } from '../planning/fieldCautions.ts'
+import { columnsAlong } from '../planning/fieldColumns.ts'
 import { geodesicLine } from '../planning/geodesic.ts'
 import { type PlanningPool } from '../planning/pool.ts'
-import { type SurveyedTime } from '../planning/survey.ts'
+import { type Survey, type SurveyedTime } from '../planning/survey.ts'
 import {
   rank,
   sunElevation,
@@ -18,6 +24,7 @@ import { toSpread } from './dispersions.ts'
 import { toFlightPlan } from './flightPlan.ts'
 import { type Work } from './jobRunner.ts'
 import { describeNotFlyable } from './notFlyableAnswer.ts'
+import { describeOutside } from './outsideFieldAnswer.ts'
 import { faultyRequest } from './problems.ts'
 import { place } from './runAnswer.ts'
 import { type Plan } from './schemas/plan.ts'
@@ -79,11 +86,14 @@ export function releaseTimes(
   return Array.from({ length: count }, (_, i) => from + i * step)
 }
 
-/** The airs that a survey flies in. @throws Problem 422 where one is not there or has no time of its own */
-export function surveyedAirs(request: PlannedWindows, airs: Airs): AirSource[] {
+/** The airs that a survey flies in; null for a forecast, whose air is another at each time. @throws Problem 422 where one is not there or has no time of its own */
+export function surveyedAirs(request: PlannedWindows, airs: Airs): ColumnSource[] | null {
   const { profileIds, plan } = request
-  if (!profileIds) return [airs.source(plan.air)]
-  const sources = profileIds.map((id) => airs.source({ kind: 'profile', id }))
+  if (!profileIds) {
+    const source = airs.source(plan.air)
+    return source.kind === 'field' ? null : [source]
+  }
+  const sources = profileIds.map((id) => airs.profile(id))
   if (sources.length === 1) return sources
   const seen = new Set<number>()
   sources.forEach(({ name, validAt }, i) => {
@@ -101,6 +111,23 @@ export function surveyedAirs(request: PlannedWindows, airs: Airs): AirSource[] {
   return sources
 }
 
+/** The air of one release time, or why a plan cannot be flown in it. */
+interface SurveyedAir extends Omit<AirOfTime, 'recipe'> {
+  recipe: AirRecipe | NotFlyable | OutsideField
+}
+
+/** The air that a plan's flight meets in a forecast. */
+function airInField(source: AirSource, plan: FlightPlan): SurveyedAir {
+  if (source.kind !== 'field') throw new Error('a forecast was asked for')
+  const air = { how: 'single', sources: [source], age: airAge(source, plan.launch.time) } as const
+  try {
+    return { ...air, sources: [source], recipe: columnsAlong(plan, source) }
+  } catch (error) {
+    if (!(error instanceof NotFlyable) && !(error instanceof OutsideField)) throw error
+    return { ...air, sources: [source], recipe: error }
+  }
+}
+
 /** Works a survey of release times out to the JSON of its answer. */
 export function windowsWork(airs: Airs, pool: PlanningPool): Work {
   return async (request, signal, progress) => {
@@ -113,19 +140,31 @@ export function windowsWork(airs: Airs, pool: PlanningPool): Work {
     }
     const sources = surveyedAirs(planned, airs)
     const times = releaseTimes(planned)
-    const flown = times.map((time) => {
+    const flown: { air: SurveyedAir; survey: Survey }[] = []
+    for (const time of times) {
       const plan = toFlightPlan(planned.plan)
       plan.launch.time = time
-      const air = airOfTime(sources, time, planned.betweenProfiles)
+      const air =
+        sources === null
+          ? airInField(airs.source(planned.plan.air), plan)
+          : airOfTime(sources, time, planned.betweenProfiles)
       const spread = toSpread(planned.spread, plan, air.age)
-      return { air, survey: { plan, members, spread, seed: planned.seed, limits } }
-    })
-    const surveyed = await pool.survey(
-      flown.map(({ air, survey }) => ({ air: air.recipe, survey })),
+      flown.push({ air, survey: { plan, members, spread, seed: planned.seed, limits } })
+      if (sources === null) await setImmediate() // a flight in a forecast for each time takes a while
+      signal.throwIfAborted()
+    }
+    const surveyedFlyable = await pool.survey(
+      flown.flatMap(({ air: { recipe }, survey }) =>
+        recipe instanceof Error ? [] : [{ air: recipe, survey }],
+      ),
       signal,
       progress,
     )
-    const checks = surveyed.map((one) => (one instanceof NotFlyable ? null : one.checks))
+    let next = 0
+    const surveyed = flown.map(({ air: { recipe } }) =>
+      recipe instanceof Error ? recipe : surveyedFlyable[next++],
+    )
+    const checks = surveyed.map((one) => (one instanceof Error ? null : one.checks))
     const order = rank(checks)
     const answer: WindowsAnswer = {
       seed: planned.seed,
@@ -139,7 +178,10 @@ export function windowsWork(airs: Airs, pool: PlanningPool): Work {
         checks: (checks[i] ?? []).map(checkAnswer),
       })),
       ranking: order.map((i) => isoTime(times[i])),
-      cautions: cautionsOf(flown.map(({ air }) => air)),
+      cautions: cautionsOf(
+        flown.map(({ air }) => air),
+        members > 0,
+      ),
     }
     return JSON.stringify(answer)
   }
@@ -168,13 +210,20 @@ function range({ atLeast, atMost }: { atLeast?: number | undefined; atMost?: num
   }
 }
 
-function airAnswer({ how, sources, age }: AirOfTime) {
+function airAnswer({ how, sources, age }: SurveyedAir) {
   return { how, names: sources.map(({ name }) => name), ageS: age === null ? null : round(age, 0) }
 }
 
-function figuresAnswer(surveyed: SurveyedTime | NotFlyable, time: number, plan: Plan) {
+function figuresAnswer(
+  surveyed: SurveyedTime | NotFlyable | OutsideField,
+  time: number,
+  plan: Plan,
+) {
   if (surveyed instanceof NotFlyable) {
     return { notFlyable: describeNotFlyable(surveyed.reason).message, figures: null }
+  }
+  if (surveyed instanceof OutsideField) {
+    return { notFlyable: describeOutside(surveyed).message, figures: null }
   }
   const { landing, releaseRate, burstAltitude, groundWind, regionArea } = surveyed.figures
   const reach = geodesicLine(place(plan.launch), landing)
@@ -210,9 +259,11 @@ function checkAnswer({ limit, value, bound, margin }: LimitCheck) {
   }
 }
 
-function cautionsOf(airs: readonly AirOfTime[]) {
+function cautionsOf(airs: readonly SurveyedAir[], haveMembers: boolean) {
   const cautions: Caution[] = [airspaceNotification]
-  const oldest = Math.max(...airs.map(({ age }) => age ?? 0))
+  const isForecast = airs.some(({ sources }) => sources.some(({ kind }) => kind === 'field'))
+  if (isForecast && haveMembers) cautions.push(membersAlongFlight)
+  const oldest = isForecast ? 0 : Math.max(...airs.map(({ age }) => age ?? 0))
   if (airs.some(({ sources }) => sources.some(({ kind }) => kind === 'standard'))) {
     cautions.push({
       code: 'still-air',

@@ -8,6 +8,8 @@ export interface FlightRow {
   launchTime: number
   /** The sounding that the plan names; null for other air */
   profileId: string | null
+  /** The forecast that the plan names; null for other air */
+  fieldId: string | null
   createdAt: string
   updatedAt: string
   /** JSON */
@@ -31,7 +33,7 @@ export interface FlightFilter {
 }
 
 const COLUMNS = `flights.id, title, launch_time AS launchTime, flights.profile_id AS profileId,
-  created_at AS createdAt, updated_at AS updatedAt, plan, outcome`
+  flights.field_id AS fieldId,  created_at AS createdAt, updated_at AS updatedAt, plan, outcome`
 
 const WITH_RUNS = `${COLUMNS},
   (SELECT count(*) FROM runs WHERE flight_id = flights.id) AS runCount,
@@ -53,12 +55,12 @@ export class Flights {
 
   constructor(database: Database.Database) {
     this.inserting = database.prepare(
-      `INSERT INTO flights (id, title, launch_time, profile_id, created_at, updated_at, plan, outcome)
-       VALUES (@id, @title, @launchTime, @profileId, @createdAt, @updatedAt, @plan, @outcome)`,
+      `INSERT INTO flights (id, title, launch_time, profile_id, field_id, created_at, updated_at, plan, outcome)
+       VALUES (@id, @title, @launchTime, @profileId, @fieldId, @createdAt, @updatedAt, @plan, @outcome)`,
     )
     this.updating = database.prepare(
       `UPDATE flights SET title = @title, launch_time = @launchTime, profile_id = @profileId,
-       updated_at = @updatedAt, plan = @plan, outcome = @outcome WHERE id = @id`,
+       field_id = @fieldId,       updated_at = @updatedAt, plan = @plan, outcome = @outcome WHERE id = @id`,
     )
     this.one = database.prepare<[string], FlightWithRuns>(
       `SELECT ${WITH_RUNS} FROM flights WHERE id = ?`,

@@ -6,6 +6,7 @@ export interface RunRow {
   id: string
   flightId: string
   profileId: string | null
+  fieldId: string | null
   answer: string
   track: Buffer
 }
@@ -21,8 +22,8 @@ export class Runs {
 
   constructor(database: Database.Database) {
     this.inserting = database.prepare(
-      `INSERT INTO runs (id, flight_id, profile_id, answer, track)
-       VALUES (@id, @flightId, @profileId, @answer, @track)`,
+      `INSERT INTO runs (id, flight_id, profile_id, field_id, answer, track)
+       VALUES (@id, @flightId, @profileId, @fieldId, @answer, @track)`,
     )
     this.one = database.prepare<[string], { answer: string }>(
       'SELECT answer FROM runs WHERE id = ?',

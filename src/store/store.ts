@@ -2,6 +2,7 @@ import type Database from 'better-sqlite3'
 import { Deliveries } from './deliveries.ts'
 import { Events } from './events.ts'
 import { Fetches } from './fetches.ts'
+import { Fields } from './fields.ts'
 import { FirstAnswers } from './firstAnswers.ts'
 import { Flights } from './flights.ts'
 import { GroupCommit } from './groupCommit.ts'
@@ -16,22 +17,27 @@ export class Store {
   readonly flights: Flights
   readonly runs: Runs
   readonly profiles: Profiles
+  readonly fields: Fields
   readonly firstAnswers: FirstAnswers
   readonly jobs: Jobs
   readonly watches: Watches
   readonly events: Events
   readonly deliveries: Deliveries
   readonly fetches: Fetches
+  /** The database file */
+  readonly file: string
   private readonly database: Database.Database
   private readonly group: GroupCommit
 
   /** Opens the database `file`, applying what is new in the folder `migrations`. */
   constructor(file: string, migrations: string) {
+    this.file = file
     this.database = openDatabase(file, migrations)
     this.group = new GroupCommit(this.database)
     this.flights = new Flights(this.database)
     this.runs = new Runs(this.database)
     this.profiles = new Profiles(this.database)
+    this.fields = new Fields(this.database)
     this.firstAnswers = new FirstAnswers(this.database)
     this.jobs = new Jobs(this.database)
     this.watches = new Watches(this.database)

@@ -26,6 +26,17 @@ export const INDEX = `1:0:d=2011011012:HGT:250 mb:120 hour fcst:
 10:98367:d=2011011012:VGRD:500 mb:120 hour fcst:
 `
 
+/** The forecast as if its run had begun in another year, on 1 June at 0 UTC, or 1 January. */
+export function forecastOf(year: number, month: number): Buffer {
+  const file = Buffer.from(FORECAST)
+  for (const [, offset] of INDEX.matchAll(/^\d+:(\d+):/gm)) {
+    const section1 = Number(offset) + 16
+    file.writeUInt16BE(year, section1 + 12)
+    file.set([month, 1, 0], section1 + 14)
+  }
+  return file
+}
+
 export interface Request {
   path: string
   range: string | undefined

@@ -3,7 +3,7 @@ import { emptyAirState } from '../../src/physics/air.ts'
 import { Column } from '../../src/physics/column.ts'
 import { airOfTime } from '../../src/planning/airOfTime.ts'
 import { columnOf, recipeKey } from '../../src/planning/airRecipe.ts'
-import { type AirSource } from '../../src/planning/airSource.ts'
+import { type ColumnSource } from '../../src/planning/airSource.ts'
 import { geodesicLine } from '../../src/planning/geodesic.ts'
 import { type Region } from '../../src/planning/regions.ts'
 import { type TimeFigures } from '../../src/planning/survey.ts'
@@ -12,7 +12,7 @@ import { inventedAir, inventedLevels } from './inventedAir.ts'
 
 const DEGREE = Math.PI / 180
 
-function source(id: string, validAt: number | null, turn = 0): AirSource {
+function source(id: string, validAt: number | null, turn = 0): ColumnSource {
   const levels = inventedLevels(turn)
   return {
     kind: 'profile',

@@ -13,6 +13,7 @@ const flight = (id: string) => ({
   title: id,
   launchTime: 0,
   profileId: null,
+  fieldId: null,
   createdAt: '',
   updatedAt: '',
   plan: '{}',

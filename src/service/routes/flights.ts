@@ -1,7 +1,7 @@
 import { v7 as uuid } from 'uuid'
 import { z } from 'zod'
 import { type FlightFilter, type FlightRow } from '../../store/flights.ts'
-import { profileIdOf } from '../airs.ts'
+import { fieldIdOf, profileIdOf } from '../airs.ts'
 import { type App, type Context } from '../context.ts'
 import { answerCreation } from '../creating.ts'
 import { flightAnswer, storedFlight, storedPlan } from '../flightAnswer.ts'
@@ -179,6 +179,7 @@ function planColumns(plan: Plan) {
   return {
     launchTime: seconds(plan.launch.time),
     profileId: profileIdOf(plan.air),
+    fieldId: fieldIdOf(plan.air),
     plan: JSON.stringify(plan),
   }
 }

@@ -1,6 +1,7 @@
 import { unpackTrack } from '../../exchange/trackRow.ts'
 import { classify } from '../../physics/icaoClass.ts'
 import { crossings, extent, type AskedLevel, type Crossing } from '../../planning/crossings.ts'
+import { anyAirOf } from '../../planning/airSource.ts'
 import { type App, type Context } from '../context.ts'
 import { storedPlan, storedRun } from '../flightAnswer.ts'
 import { notFound } from '../problems.ts'
@@ -54,7 +55,7 @@ export function noticeRoutes(app: App, { store, airs }: Context): void {
         ...flightLevels.map((flightLevel) => ({ kind: 'flight-level', flightLevel }) as const),
         ...altitudesM.map((altitude) => ({ kind: 'altitude', altitude }) as const),
       ]
-      const { air } = airs.source(run.plan.air).column
+      const air = anyAirOf(airs.source(run.plan.air))
       const passed = crossings(track, air, release, levels).map((crossing) =>
         crossingAnswer(crossing, release),
       )

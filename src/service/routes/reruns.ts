@@ -1,5 +1,6 @@
 import { setImmediate } from 'node:timers/promises'
 import { z } from 'zod'
+import { OutsideField } from '../../fields/outsideField.ts'
 import { NotFlyable } from '../../physics/notFlyable.ts'
 import { type FlightRow } from '../../store/flights.ts'
 import { type Store } from '../../store/store.ts'
@@ -9,6 +10,7 @@ import { storedPlan, storedRun } from '../flightAnswer.ts'
 import { flyRun, type FlownRun } from '../flying.ts'
 import { keepRun } from '../keeping.ts'
 import { describeNotFlyable } from '../notFlyableAnswer.ts'
+import { describeOutside } from '../outsideFieldAnswer.ts'
 import { faultyRequest, Problem, type Fault } from '../problems.ts'
 import { creatingHeaders, idSchema, problemAnswers, timeSchema } from '../schemas/common.ts'
 import { airSchema } from '../schemas/plan.ts'
@@ -70,8 +72,11 @@ export function rerunRoutes(app: App, { store, airs }: Context): void {
             const plan = { ...storedPlan(flight), air: request.body.air }
             flown.push({ flight, made: flyRun(flight.id, plan, before, airs) })
           } catch (error) {
-            if (!(error instanceof NotFlyable)) throw error
-            const { path, message } = describeNotFlyable(error.reason)
+            if (!(error instanceof NotFlyable) && !(error instanceof OutsideField)) throw error
+            const { path, message } =
+              error instanceof NotFlyable
+                ? describeNotFlyable(error.reason)
+                : describeOutside(error)
             faults.push({ path: '/air', message: `Flight ${flight.id}, ${path}: ${message}` })
           }
           if (performance.now() - turn > TURN_MS) {

@@ -22,7 +22,7 @@ export function sourceRoutes(app: App, { store, fetcher }: Context): void {
         response: { 200: z.object({ items: z.array(sourceSchema) }), ...problemAnswers },
       },
     },
-    () => ({ items: fetcher?.sources.map(answer) ?? [] }),
+    () => ({ items: fetcher.sources.map(answer) }),
   )
 
   app.get(
@@ -35,7 +35,7 @@ export function sourceRoutes(app: App, { store, fetcher }: Context): void {
         response: { 200: sourceSchema, ...problemAnswers },
       },
     },
-    (request) => answer(sourceOr404(request.params.name).source),
+    (request) => answer(sourceOr404(request.params.name)),
   )
 
   app.post(
@@ -54,10 +54,10 @@ export function sourceRoutes(app: App, { store, fetcher }: Context): void {
       },
     },
     async (request, reply) => {
-      const { fetcher: found, source } = sourceOr404(request.params.name)
+      const source = sourceOr404(request.params.name)
       const { run } = request.query
       try {
-        await found.fetchNow(source, run === undefined ? undefined : seconds(run))
+        await fetcher.fetchNow(source, run === undefined ? undefined : seconds(run))
       } catch (error) {
         if (error instanceof NotFetched) throw new Problem(409, error.message)
         throw error
@@ -66,18 +66,16 @@ export function sourceRoutes(app: App, { store, fetcher }: Context): void {
     },
   )
 
-  function sourceOr404(name: string) {
-    const source = fetcher?.sources.find((one) => one.name === name)
-    if (!fetcher || !source) {
-      throw new Problem(404, `There is no source named ${name}: see GET /v1/sources.`)
-    }
-    return { fetcher, source }
+  function sourceOr404(name: string): SourceSettings {
+    const source = fetcher.sources.find((one) => one.name === name)
+    if (!source) throw new Problem(404, `There is no source named ${name}: see GET /v1/sources.`)
+    return source
   }
 
   function answer(source: SourceSettings): Source {
     const { name, runs, availableAfterS, stepHours, keepRuns, diskBudgetMB } = source
     const last = store.fetches.latest(name)
-    const nextLook = fetcher?.nextLook(source) ?? null
+    const nextLook = fetcher.nextLook(source)
     return {
       name,
       runs,

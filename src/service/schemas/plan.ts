@@ -7,10 +7,19 @@ export const airSchema = z
   .discriminatedUnion('kind', [
     z.strictObject({ kind: z.literal('standard') }),
     z.strictObject({ kind: z.literal('profile'), id: idSchema }),
+    z.strictObject({
+      kind: z.literal('field'),
+      id: idSchema,
+      outside: z
+        .enum(['refuse', 'hold'])
+        .default('refuse')
+        .describe('Beyond the forecast’s grid and times: refused, or the nearest air held'),
+    }),
   ])
   .meta({
     id: 'Air',
-    description: 'The standard atmosphere without wind, or an uploaded sounding',
+    description:
+      'The standard atmosphere without wind, an uploaded sounding, or an uploaded forecast',
   })
 
 export const parachuteSchema = z

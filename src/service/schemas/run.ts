@@ -26,10 +26,13 @@ export const shiftSchema = z
 
 const airAnswerSchema = z
   .object({
-    kind: z.enum(['standard', 'profile']),
+    kind: z.enum(['standard', 'profile', 'field']),
     id: idSchema.optional(),
     name: z.string(),
-    validAt: timeSchema.nullable(),
+    validAt: timeSchema
+      .nullable()
+      .describe('Of a forecast: the release, or the nearest of its times'),
+    referenceTime: timeSchema.optional().describe('Of a forecast: when its run began'),
   })
   .meta({ id: 'FlownAir', description: 'The air that a run was flown in' })
 

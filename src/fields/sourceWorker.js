@@ -1,0 +1,7 @@
+// What the decoding thread loads in development and tests, where the sources run as they are: the build
+// does without this file. A thread does not take over its parent's loader.
+import { register } from 'tsx/esm/api'
+
+register()
+
+export const { decode } = await import('./decodingWorker.ts')
