@@ -1,20 +1,24 @@
 /**
  * How long it takes to decode and store a forecast's pressure levels of height, temperature and wind,
  * beside the reference decoder (ecCodes' tools, which must be on the path) on the same messages; and a
- * flight in that field beside a flight in a profile.
+ * flight in that field beside a flight in a profile; and how late the event loop runs
+ * while the service takes the whole file in.
  *
  *   tsx tests/bench/fieldsBench.ts <forecast, GRIB edition 2>     or FORECAST=<forecast>
  */
 import { execFileSync, type ExecFileSyncOptions } from 'node:child_process'
-import { createReadStream, mkdtempSync, rmSync, statSync } from 'node:fs'
+import { createReadStream, mkdtempSync, readFileSync, rmSync, statSync } from 'node:fs'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
+import { monitorEventLoopDelay } from 'node:perf_hooks'
 import { FieldAir } from '../../src/fields/fieldAir.ts'
 import { FieldFile } from '../../src/fields/fieldFile.ts'
 import { storeField } from '../../src/fields/fieldWriter.ts'
 import { Column } from '../../src/physics/column.ts'
 import { fly, flyAlongPath } from '../../src/physics/flight.ts'
 import { ProfileAir } from '../../src/physics/profileAir.ts'
+import { buildApp } from '../../src/service/app.ts'
+import { Store } from '../../src/store/store.ts'
 import { standardFlight } from '../physics/plans.ts'
 
 const source = process.argv[2] ?? process.env.FORECAST
@@ -83,4 +87,29 @@ const best = (times: number[]) => Math.min(...times)
 console.log(
   `a flight in a profile ${best(microseconds.profile).toFixed(1)} µs, in a field ${best(microseconds.field).toFixed(1)} µs: ${(best(microseconds.field) / best(microseconds.profile)).toFixed(2)} times (best of 9)`,
 )
+// The client runs in the same process, so that its own share is in the lateness.
+const MIGRATIONS = new URL('../../migrations', import.meta.url).pathname
+const store = new Store(join(folder, 'bench.sqlite'), MIGRATIONS)
+const app = await buildApp(store, false)
+const address = await app.listen({ host: '127.0.0.1', port: 0 })
+const body = readFileSync(source)
+const upload = async () => {
+  const answer = await fetch(`${address}/v1/fields`, {
+    method: 'POST',
+    headers: { 'content-type': 'application/grib' },
+    body,
+  })
+  if (answer.status !== 201) throw new Error(await answer.text())
+}
+await upload() // starts the thread
+const lateness = monitorEventLoopDelay({ resolution: 1 })
+lateness.enable()
+const uploaded = await several(`upload of the whole file, ${body.length} bytes`, 3, upload)
+lateness.disable()
+const late = (percentile: number) => (lateness.percentile(percentile) / 1e6 - 1).toFixed(1)
+console.log(
+  `event loop late by ${late(50)} ms (median), ${late(99)} ms (99 %), ${late(100)} ms (worst) over ${(uploaded * 3).toFixed(1)} s`,
+)
+await app.close()
+store.close()
 rmSync(folder, { recursive: true })
