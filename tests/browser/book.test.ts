@@ -228,10 +228,10 @@ inChromium('book', (room) => {
     // A breeze moves it less than 20 km: flown, not told. A gale is told.
     const validAt = hoursFromRelease(-4)
     await uploaded(address, steadyWind(270, 1, { validAt }))
-    await expect.poll(() => runs.count(), { timeout: 15_000 }).toBe(2)
+    await expect.poll(() => runs.count(), { timeout: 25_000 }).toBe(2)
     expect(await told.count()).toBe(0)
     await uploaded(address, steadyWind(270, 20, { validAt: hoursFromRelease(-2) }))
-    await expect.poll(() => told.getByRole('listitem').count(), { timeout: 15_000 }).toBe(1)
+    await expect.poll(() => told.getByRole('listitem').count(), { timeout: 25_000 }).toBe(1)
     // All of the drift since it was last told, which was at the site: as far as it lands from there.
     const { latestRun } = await get<Flight>(address, `/v1/flights/${flight.id}`)
     expect(await told.textContent()).toContain(
