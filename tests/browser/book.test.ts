@@ -219,7 +219,7 @@ inChromium('book', (room) => {
     await page.getByText('Not watched').waitFor()
     await page.getByLabel('Tell where the landing moves more than, km').fill('20')
     await page.getByRole('button', { name: 'Watch it' }).click()
-    await page.getByText('Watched: it is flown again').waitFor()
+    await page.getByText('it is flown again by itself').waitFor()
     const watch = await get<{ tellBeyondM: number }>(address, `/v1/flights/${flight.id}/watch`)
     expect(watch.tellBeyondM).toBe(20_000)
 
