@@ -35,6 +35,19 @@ export interface ColumnAir extends Air {
   readonly observed: { temperature: AltitudeSpan | null; wind: AltitudeSpan | null }
 }
 
+/** Air that differs from place to place and from time to time: a gridded forecast. */
+export interface VaryingAir extends Air {
+  /** Longest step in altitude, m, at which a flight sees enough of the air's detail along its path. */
+  readonly longestStep: number
+  /**
+   * The next geometric altitude, m, above a given one where a quantity has a kink, over the place and
+   * time sampled last; Infinity above all. Between kinks every quantity is smooth in altitude.
+   */
+  breakAbove(altitude: number): number
+  /** The same below; -Infinity below all. */
+  breakBelow(altitude: number): number
+}
+
 /** Geometric altitudes, m. */
 export interface AltitudeSpan {
   bottom: number

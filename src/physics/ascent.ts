@@ -48,7 +48,7 @@ export function gasVolume(
 }
 
 /** Reynolds number at which a balloon rises steadily in this air; 0 where it has no lift. */
-function risingReynolds(
+export function risingReynolds(
   balloon: AscendingBalloon,
   air: AirState,
   volume: number,
@@ -59,7 +59,7 @@ function risingReynolds(
 }
 
 /** Cd·Re² of a balloon that rises steadily in this air; negative or nothing where it has no lift. */
-function bestNumber(
+export function bestNumber(
   balloon: AscendingBalloon,
   air: AirState,
   volume: number,
@@ -71,7 +71,8 @@ function bestNumber(
   return best / (balloon.dragFactor ?? 1)
 }
 
-function speed(reynolds: number, air: AirState, volume: number): number {
+/** Speed in m/s of a sphere of `volume` m³ at a Reynolds number. */
+export function speed(reynolds: number, air: AirState, volume: number): number {
   return (reynolds * air.viscosity) / (air.density * sphereDiameter(volume)) // Re = ρwD/μ
 }
 
@@ -115,13 +116,15 @@ export function ascend(
     else rise.through(slab, top)
     rise.wholeSlabs(slab + 1, burstSlab, recorder)
   }
-  if (burstSlab === count) throw noBurst(balloon, column)
+  const volume = (altitude: number) => volumeAt(balloon, column, altitude)
+  if (burstSlab === count) throw noBurst(balloon, volume(CEILING))
 
-  const burst = burstAltitude(balloon, column, at.altitude, column.altitude(burstSlab + 1))
+  const burstTop = column.altitude(burstSlab + 1)
+  const burst = burstAltitude(balloon.burstVolume, volume, at.altitude, burstTop)
   if (recorder) rise.recordedStep(burstSlab, burst, recorder, 'burst')
   else if (burst > at.altitude) rise.through(burstSlab, burst)
   end.burstRate = rise.rateHere()
-  if (!(end.burstRate > 0)) throw stopsRising(balloon, column, at.altitude)
+  if (!(end.burstRate > 0)) throw stopsRisingIn(column, balloon, at.altitude)
   end.lowestReynolds = rise.lowestReynolds
   end.highestReynolds = rise.highestReynolds
 }
@@ -243,7 +246,7 @@ class Rise {
     column.mean(bottom, top, slabAir)
     const volume = gasVolume(balloon, slabAir.temperature, slabAir.pressure)
     const reynoldsHere = risingReynolds(balloon, slabAir, volume, gravity(middle))
-    if (reynoldsHere === 0) throw stopsRising(balloon, column, bottom)
+    if (reynoldsHere === 0) throw stopsRisingIn(column, balloon, bottom)
     if (reynoldsHere < this.lowestReynolds) this.lowestReynolds = reynoldsHere
     if (reynoldsHere > this.highestReynolds) this.highestReynolds = reynoldsHere
     const rate = speed(reynoldsHere, slabAir, volume)
@@ -280,7 +283,7 @@ class Rise {
     const { windEast, windNorth } = column
     for (let slab = first; slab < end; slab++) {
       const lift = fill.moles * displacedPerMole[slab] - mass
-      if (!(lift > 0)) throw stopsRising(balloon, column, column.altitude(slab))
+      if (!(lift > 0)) throw stopsRisingIn(column, balloon, column.altitude(slab))
       best[slab] = (lift * bestPerLift[slab]) / dragFactor
     }
     balloon.drag.reynoldsOfAll(best, reynolds, first, end)
@@ -335,16 +338,18 @@ function volumeAt(balloon: AscendingBalloon, column: Column, altitude: number): 
   return gasVolume(balloon, pointAir.temperature, pointAir.pressure)
 }
 
-/** The altitude in (bottom, top] m where the gas fills the burst volume, to a tenth of a millimetre. */
-function burstAltitude(
-  balloon: AscendingBalloon,
-  column: Column,
+/**
+ * The altitude in (bottom, top] m where the gas, whose volume in m³ at an altitude `volumeAt` tells, fills
+ * the burst volume, to a tenth of a millimetre.
+ */
+export function burstAltitude(
+  burstVolume: number,
+  volumeAt: (altitude: number) => number,
   bottom: number,
   top: number,
 ): number {
   // False position with the Illinois weight on ln V, which is nearly a straight line in altitude.
-  const excess = (altitude: number) =>
-    Math.log(volumeAt(balloon, column, altitude) / balloon.burstVolume)
+  const excess = (altitude: number) => Math.log(volumeAt(altitude) / burstVolume)
   let low = bottom
   let high = top
   let excessLow = excess(low)
@@ -370,22 +375,33 @@ function burstAltitude(
   return high
 }
 
-function noBurst(balloon: AscendingBalloon, column: Column): NotFlyable {
+/** `ceilingVolume`: what the gas has grown to at the ceiling, m³. */
+export function noBurst(balloon: AscendingBalloon, ceilingVolume: number): NotFlyable {
   return new NotFlyable({
     kind: 'no-burst',
     ratedBurstDiameter: sphereDiameter(balloon.burstVolume),
     ceiling: CEILING,
-    ceilingDiameter: sphereDiameter(volumeAt(balloon, column, CEILING)),
+    ceilingDiameter: sphereDiameter(ceilingVolume),
   })
 }
 
-function stopsRising(balloon: AscendingBalloon, column: Column, altitude: number): NotFlyable {
-  // Per mole the displaced air weighs R·(T+ΔT)·ρ/p; where that is least, the gas must still carry all.
+function stopsRisingIn(column: Column, balloon: AscendingBalloon, altitude: number): NotFlyable {
+  // Per mole the displaced air weighs R·(T+ΔT)·ρ/p.
   const { edgeVolumePerMole } = column.rise(balloon.temperatureOffset)
   let leastDisplaced = Infinity
   for (let edge = column.slabAt(altitude); edge <= column.count; edge++) {
     leastDisplaced = Math.min(leastDisplaced, edgeVolumePerMole[edge] * column.edgeDensity[edge])
   }
+  return stopsRising(balloon, altitude, leastDisplaced)
+}
+
+/** `leastDisplaced`: the least mass of air in kg that a mole of the gas displaces further up. */
+export function stopsRising(
+  balloon: AscendingBalloon,
+  altitude: number,
+  leastDisplaced: number,
+): NotFlyable {
+  // Where a mole of gas displaces least, the gas must still carry all.
   const { moles, gasMass, grossLift, neckLift } = balloon.fill
   const liftPerMole = leastDisplaced - gasMass / moles
   const neededMoles = (balloon.mass - gasMass) / liftPerMole

@@ -1,15 +1,8 @@
-import { emptyAirState } from './air.ts'
+import { emptyAirState, type AirState } from './air.ts'
 import { type Column, type WindDeparture } from './column.ts'
 import { drift, driftAlong, gravity } from './earth.ts'
+import { FallMotion, type FallingLoad } from './fallMotion.ts'
 import { recordStep, type PathRecorder, type Whereabouts } from './path.ts'
-
-/** What comes down after the burst, SI. */
-export interface FallingLoad {
-  /** Payload and the share of the balloon left on the line, kg */
-  mass: number
-  /** Cd·A of the parachute, m² */
-  dragArea: number
-}
 
 /** How a descent ended, SI. The whereabouts passed in stand at the landing. */
 export interface DescentEnd {
@@ -22,7 +15,7 @@ export function emptyDescentEnd(): DescentEnd {
 }
 
 /** Steps in which the free fall after burst is taken. */
-const OPENING_STEPS = 10
+export const OPENING_STEPS = 10
 
 const slabAir = emptyAirState()
 const thirdAir = emptyAirState()
@@ -47,8 +40,9 @@ export function descend(
   recorder?: PathRecorder,
   departure?: WindDeparture,
 ): void {
-  coast(load, burstRate, column, at)
-  fall.begin(load, column, at, departure)
+  column.air.sampleAltitude(at.altitude, pointAir)
+  coast(load, burstRate, pointAir, at)
+  fall.beginIn(column, load, at, departure)
   if (recorder) {
     column.at(at.altitude, pointAir)
     recorder.record(at, 0, pointAir.windEast, pointAir.windNorth, 'descent')
@@ -77,14 +71,13 @@ export function descend(
 }
 
 /** The last metre upwards: gravity and drag stop the load. Exact for constant density. */
-function coast(load: FallingLoad, burstRate: number, column: Column, at: Whereabouts): void {
-  column.air.sampleAltitude(at.altitude, pointAir)
+export function coast(load: FallingLoad, burstRate: number, air: AirState, at: Whereabouts): void {
   const weight = gravity(at.altitude)
-  const k = (pointAir.density * load.dragArea) / load.mass
+  const k = (air.density * load.dragArea) / load.mass
   const excess = (k * burstRate * burstRate) / (2 * weight)
   const rise = Math.log1p(excess) / k // from d(w²)/dz = −2g − k·w²
   const duration = Math.atan(Math.sqrt(excess)) / Math.sqrt((weight * k) / 2) // from dw/dt = −g − ½·k·w²
-  drift(at, at.altitude, pointAir.windEast * duration, pointAir.windNorth * duration)
+  drift(at, at.altitude, air.windEast * duration, air.windNorth * duration)
   at.altitude += rise
   at.elapsed += duration
 }
@@ -99,17 +92,12 @@ let durations = new Float64Array(0)
 let speeds = new Float64Array(0)
 
 /** The state of a falling load, stepped down through a column. */
-class Fall {
-  /** w², m²/s² */
-  private square = 0
-  peakSquare = 0
+class Fall extends FallMotion {
   private column!: Column
   private at!: Whereabouts
   private departure: WindDeparture | undefined
-  /** Cd·A/m: the drag k over the density, m²/kg */
-  private dragPerDensity = 0
 
-  begin(load: FallingLoad, column: Column, at: Whereabouts, departure?: WindDeparture): void {
+  beginIn(column: Column, load: FallingLoad, at: Whereabouts, departure?: WindDeparture): void {
     if (drifts.altitude.length < column.count) {
       drifts = {
         altitude: new Float64Array(column.count),
@@ -119,17 +107,10 @@ class Fall {
       durations = new Float64Array(column.count)
       speeds = new Float64Array(column.count)
     }
-    this.square = 0
-    this.peakSquare = 0
+    this.begin(load)
     this.column = column
     this.at = at
     this.departure = departure
-    this.dragPerDensity = load.dragArea / load.mass
-  }
-
-  /** m/s, downwards positive */
-  get speed(): number {
-    return Math.sqrt(this.square)
   }
 
   /** A step in σ = √(apex − z) down to altitude `to`, m. */
@@ -242,41 +223,6 @@ class Fall {
       recordStep(recorder, column, from, -speed, at, -speeds[step], 'descent')
       speed = speeds[step]
     }
-  }
-
-  /**
-   * Two-stage Radau IIA (Hairer and Wanner, Solving Ordinary Differential Equations II, table IV.5.5) on
-   * dq/dx = s·(2g − k·q) over a step `h` in x, with s = ds/dx. The equation is linear, so its two stages
-   * are a pair of linear equations. Returns the duration ∫ s/√q dx, seconds.
-   */
-  private radau(
-    h: number,
-    firstScale: number,
-    firstGravity: number,
-    firstDensity: number,
-    lastScale: number,
-    lastGravity: number,
-    lastDensity: number,
-  ): number {
-    const { dragPerDensity } = this
-    const firstPull = h * firstScale * 2 * firstGravity
-    const lastPull = h * lastScale * 2 * lastGravity
-    const firstDrag = h * firstScale * firstDensity * dragPerDensity
-    const lastDrag = h * lastScale * lastDensity * dragPerDensity
-    // q₁ = q₀ + 5/12·f₁ − 1/12·f₂ and q₂ = q₀ + 3/4·f₁ + 1/4·f₂ with f = pull − drag·q
-    const right1 = this.square + (5 * firstPull - lastPull) / 12
-    const right2 = this.square + (3 * firstPull + lastPull) / 4
-    const a11 = 1 + (5 / 12) * firstDrag
-    const a12 = -lastDrag / 12
-    const a21 = (3 / 4) * firstDrag
-    const a22 = 1 + lastDrag / 4
-    const determinant = a11 * a22 - a12 * a21
-    const first = (right1 * a22 - a12 * right2) / determinant
-    const last = (a11 * right2 - a21 * right1) / determinant
-    this.square = last
-    if (first > this.peakSquare) this.peakSquare = first
-    if (last > this.peakSquare) this.peakSquare = last
-    return h * ((0.75 * firstScale) / Math.sqrt(first) + (0.25 * lastScale) / Math.sqrt(last))
   }
 
   private move(

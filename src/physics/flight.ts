@@ -1,14 +1,23 @@
-import { emptyAirState } from './air.ts'
-import { ascend, emptyAscentEnd, gasVolume, type AscendingBalloon } from './ascent.ts'
+import { emptyAirState, type AirState, type VaryingAir } from './air.ts'
+import {
+  ascend,
+  emptyAscentEnd,
+  gasVolume,
+  type AscendingBalloon,
+  type AscentEnd,
+} from './ascent.ts'
 import { type Column } from './column.ts'
-import { descend, emptyDescentEnd } from './descent.ts'
+import { descend, emptyDescentEnd, type DescentEnd } from './descent.ts'
 import { dragCurve, type DragChoice } from './dragCurves.ts'
 import { wrapLongitude } from './earth.ts'
+import { type FallingLoad } from './fallMotion.ts'
 import { fill, type Fill } from './fill.ts'
 import { sphereDiameter, sphereVolume, type Gas } from './gas.ts'
 import { NotFlyable } from './notFlyable.ts'
 import { dragArea, type Parachute } from './parachute.ts'
 import { type PathRecorder, type Whereabouts } from './path.ts'
+import { ascendAlongPath } from './varyingAscent.ts'
+import { descendAlongPath } from './varyingDescent.ts'
 
 /** Changes whenever the same plan in the same air would give another answer; stored with every run. */
 export const MODEL_VERSION = '1.1'
@@ -55,18 +64,76 @@ export interface Flight {
   landing: Whereabouts & { speed: number }
 }
 
+/** The ways through some air. Each moves the whereabouts along. */
+interface Route {
+  sample(at: Whereabouts, out: AirState): void
+  ascend(balloon: AscendingBalloon, at: Whereabouts, end: AscentEnd): void
+  descend(
+    load: FallingLoad,
+    burstRate: number,
+    landingAltitude: number,
+    at: Whereabouts,
+    end: DescentEnd,
+  ): void
+}
+
 /**
  * Flies a plan through one column of air: fill, ascent, burst, descent, landing.
  * @throws NotFlyable with the number that stands in the way.
  */
 export function fly(plan: FlightPlan, column: Column, recorder?: PathRecorder): Flight {
+  return flyRoute(plan, {
+    sample(at, out) {
+      column.air.sampleAltitude(at.altitude, out)
+    },
+    ascend(balloon, at, end) {
+      ascend(balloon, column, at, end, recorder)
+    },
+    descend(load, burstRate, landingAltitude, at, end) {
+      descend(load, burstRate, landingAltitude, column, at, end, recorder)
+    },
+  })
+}
+
+/**
+ * Flies a plan through air that varies along the path, as `fly` does through one column, in steps of at
+ * most `longestStep` m of altitude.
+ * @throws NotFlyable with the number that stands in the way; and what the air throws where it ends.
+ */
+export function flyAlongPath(
+  plan: FlightPlan,
+  air: VaryingAir,
+  recorder?: PathRecorder,
+  longestStep = air.longestStep,
+): Flight {
+  const { time } = plan.launch
+  return flyRoute(plan, {
+    sample(at, out) {
+      air.sample(at.latitude, at.longitude, at.altitude, time + at.elapsed, out)
+    },
+    ascend(balloon, at, end) {
+      ascendAlongPath(balloon, air, time, longestStep, at, end, recorder)
+    },
+    descend(load, burstRate, landingAltitude, at, end) {
+      descendAlongPath(load, burstRate, landingAltitude, air, time, longestStep, at, end, recorder)
+    },
+  })
+}
+
+function flyRoute(plan: FlightPlan, route: Route): Flight {
   const { balloon, gas, neckLift, payloadMass, launch, landingAltitude } = plan
   if (!(neckLift > payloadMass)) {
     throw new NotFlyable({ kind: 'no-free-lift', neckLift, payloadMass })
   }
 
+  const at: Whereabouts = {
+    latitude: launch.latitude,
+    longitude: launch.longitude,
+    altitude: launch.altitude,
+    elapsed: 0,
+  }
   const air = emptyAirState()
-  column.air.sampleAltitude(launch.altitude, air)
+  route.sample(at, air)
   const filled = fill(neckLift, balloon.mass, payloadMass, gas, air)
   const ascending: AscendingBalloon = {
     fill: filled,
@@ -85,14 +152,8 @@ export function fly(plan: FlightPlan, column: Column, recorder?: PathRecorder): 
     })
   }
 
-  const at: Whereabouts = {
-    latitude: launch.latitude,
-    longitude: launch.longitude,
-    altitude: launch.altitude,
-    elapsed: 0,
-  }
   const ascent = emptyAscentEnd()
-  ascend(ascending, column, at, ascent, recorder)
+  route.ascend(ascending, at, ascent)
   const burst = {
     latitude: at.latitude,
     longitude: wrapLongitude(at.longitude),
@@ -109,14 +170,14 @@ export function fly(plan: FlightPlan, column: Column, recorder?: PathRecorder): 
       burstAltitude: burst.altitude,
     })
   }
-  column.air.sampleAltitude(burst.altitude, air)
+  route.sample(at, air)
   burst.pressure = air.pressure
   burst.temperature = air.temperature
 
   const fallingMass = payloadMass + balloon.shareLeftOnLine * balloon.mass
   const falling = { mass: fallingMass, dragArea: dragArea(plan.parachute, fallingMass) }
   const descent = emptyDescentEnd()
-  descend(falling, ascent.burstRate, landingAltitude, column, at, descent, recorder)
+  route.descend(falling, ascent.burstRate, landingAltitude, at, descent)
 
   return {
     fill: filled,

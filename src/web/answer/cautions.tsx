@@ -1,9 +1,10 @@
 import { type Run } from '../../service/schemas/run.ts'
 
 /** What weakens a prediction, in plain words, and the standing line on airspace. */
-export function Cautions({ cautions }: { cautions: Run['cautions'] }) {
+export function Cautions(props: { cautions: Run['cautions']; label?: string }) {
+  const { cautions, label = 'Cautions' } = props
   return (
-    <section aria-label="Cautions">
+    <section aria-label={label}>
       <h3>Heed before you release</h3>
       <ul class="cautions">
         {cautions.map(({ code, message }) => (

@@ -77,7 +77,7 @@ export function WhenForm({ faults }: { faults: readonly Fault[] }) {
   })
   return (
     <>
-      <div class="pair">
+      <div class="pair wide">
         <Field path="/from" label="First release, UTC" type="datetime-local" {...value('from')} />
         <Field path="/to" label="Last release, UTC" type="datetime-local" {...value('to')} />
         <Field path="/stepMinutes" label="Every" unit="min" {...value('stepMinutes')} />

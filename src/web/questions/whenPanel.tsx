@@ -49,7 +49,7 @@ export function WhenPanel() {
             <p class="caution">The sheet or the limits have changed since: try the times again.</p>
           )}
           <Times answer={answer} />
-          <Cautions cautions={answer.cautions} />
+          <Cautions cautions={answer.cautions} label="Cautions for the times tried" />
         </section>
       )}
     </div>
