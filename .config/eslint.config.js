@@ -73,15 +73,19 @@ export default tseslint.config(
   },
   { files: ['**/*.js'], ...tseslint.configs.disableTypeChecked },
   ...roomRules,
-  {
-    files: ['src/web/**'],
+  ...[
+    // The page's own rooms lie one folder up from each other, the program's two.
+    { files: ['src/web/*'], up: '^\\.\\./' },
+    { files: ['src/web/*/**'], up: '^(\\.\\./){2,}' },
+  ].map(({ files, up }) => ({
+    files,
     rules: {
       '@typescript-eslint/no-restricted-imports': [
         'error',
         {
           patterns: [
             {
-              regex: `^(\\.\\./)+(${rooms.filter((room) => room !== 'physics').join('|')})/`,
+              regex: `${up}(${rooms.filter((room) => room !== 'physics').join('|')})/`,
               allowTypeImports: true,
               message: 'src/web/ talks to the service through its API; it may import src/physics/.',
             },
@@ -89,5 +93,5 @@ export default tseslint.config(
         },
       ],
     },
-  },
+  })),
 )

@@ -6,7 +6,6 @@ import { call } from '../api/client.ts'
 import { Pictures } from './pictures.tsx'
 import { type ShownRun, type TrackRow } from './shownRun.ts'
 import { clock, place } from './words.ts'
-import './runView.css'
 
 interface Opened {
   title: string
@@ -28,7 +27,7 @@ export function RunView({ runId }: { runId: string }) {
   const { title, shown } = opened
   const { landing, burst, air } = shown.run
   return (
-    <div class="run-view">
+    <div>
       <h1>{title}</h1>
       <p>
         Flown in {air.name}. Bursts {clock(burst.elapsedS, false)} after release, lands at{' '}
@@ -47,5 +46,8 @@ async function open(runId: string): Promise<Opened> {
     call<{ points: TrackRow[] }>('GET', `${path}/track?format=json`),
   ])
   const { title } = await call<Flight>('GET', `/v1/flights/${run.flightId}`)
-  return { title, shown: { key: runId, label: run.air.name, run, track: track.points } }
+  return {
+    title,
+    shown: { key: runId, label: run.air.name, run, track: track.points },
+  }
 }

@@ -4,7 +4,7 @@ import { call } from '../api/client.ts'
 import { levelsOf } from '../pictures/levels.ts'
 import { type Level } from '../pictures/windColumn.ts'
 import { place } from '../pictures/words.ts'
-import { DeleteSounding } from './deleteSounding.tsx'
+import { DeleteStored } from './deleteStored.tsx'
 import { LevelsTable } from './levelsTable.tsx'
 import { SoundingPicture } from './soundingPicture.tsx'
 import { span, utc, validity } from './words.ts'
@@ -72,7 +72,11 @@ export function SoundingSheet({ id, onDeleted }: SoundingSheetProps) {
           <LevelsTable levels={levels} />
         </>
       )}
-      <DeleteSounding id={id} onDeleted={onDeleted} />
+      <DeleteStored
+        what="sounding"
+        path={`/v1/profiles/${encodeURIComponent(id)}`}
+        onDeleted={onDeleted}
+      />
     </article>
   )
 }

@@ -1,20 +1,21 @@
 import { useState } from 'preact/hooks'
 import { call } from '../api/client.ts'
 
-interface DeleteSoundingProps {
-  id: string
+interface DeleteStoredProps {
+  what: 'sounding' | 'forecast'
+  path: string
   onDeleted: () => void
 }
 
-/** Deletes a sounding after a second word; one that runs were flown in stays, and why is said. */
-export function DeleteSounding({ id, onDeleted }: DeleteSoundingProps) {
+/** Deletes a sounding or forecast after a second word; one that runs were flown in stays, and why is said. */
+export function DeleteStored({ what, path, onDeleted }: DeleteStoredProps) {
   const [asking, setAsking] = useState(false)
   const [kept, setKept] = useState<string | null>(null)
 
   const remove = async () => {
     setAsking(false)
     try {
-      await call('DELETE', `/v1/profiles/${encodeURIComponent(id)}`)
+      await call('DELETE', path)
       onDeleted()
     } catch (error) {
       setKept(error instanceof Error ? error.message : String(error))
@@ -25,7 +26,7 @@ export function DeleteSounding({ id, onDeleted }: DeleteSoundingProps) {
     <div class="delete">
       {asking ? (
         <>
-          <p id="delete-question">Delete this sounding for good?</p>
+          <p id="delete-question">Delete this {what} for good?</p>
           <button type="button" aria-describedby="delete-question" onClick={() => void remove()}>
             Delete it
           </button>
@@ -46,7 +47,7 @@ export function DeleteSounding({ id, onDeleted }: DeleteSoundingProps) {
             setKept(null)
           }}
         >
-          Delete this sounding
+          Delete this {what}
         </button>
       )}
       <div role="status">{kept !== null && <p class="refusal">Not deleted. {kept}</p>}</div>
