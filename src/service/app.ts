@@ -4,6 +4,7 @@ import swagger from '@fastify/swagger'
 import swaggerUi from '@fastify/swagger-ui'
 import fastify, { type FastifyBaseLogger, type FastifyInstance } from 'fastify'
 import { type z } from 'zod'
+import { type Fetcher } from '../fetching/fetcher.ts'
 import { PlanningPool } from '../planning/pool.ts'
 import { type Store } from '../store/store.ts'
 import { Airs } from './airs.ts'
@@ -27,6 +28,7 @@ import { outcomeRoutes } from './routes/outcomes.ts'
 import { profileRoutes } from './routes/profiles.ts'
 import { rerunRoutes } from './routes/reruns.ts'
 import { runRoutes } from './routes/runs.ts'
+import { sourceRoutes } from './routes/sources.ts'
 import { trialRoutes } from './routes/trials.ts'
 import { watchRoutes } from './routes/watches.ts'
 import { windowRoutes } from './routes/windows.ts'
@@ -68,6 +70,8 @@ export interface AppOptions {
   /** Off unless said otherwise: the service reaches out to nobody */
   webhooks?: WebhookMode
   webhookTiming?: Partial<WebhookTiming>
+  /** Fetches forecasts from the sources that an operator configured; none unless given */
+  fetcher?: Fetcher | null
   /** What the page's map is drawn on; its own coasts alone unless given */
   tiles?: TileSource | null
 }
@@ -117,20 +121,23 @@ export async function buildApp(
   const watcher = new Watcher(store, airs, app.log)
   const timing = { ...WEBHOOK_TIMING, ...options.webhookTiming }
   const webhooks = new Webhooks(store, options.webhooks ?? 'off', timing, app.log)
+  const fetcher = options.fetcher ?? null
   app.addHook('onListen', () => {
+    fetcher?.start()
     watcher.wake() // what an earlier program left
     webhooks.wake()
   })
   app.addHook('preClose', async () => {
-    await Promise.all([jobs.close(), watcher.close(), webhooks.close()])
+    await Promise.all([fetcher?.close(), jobs.close(), watcher.close(), webhooks.close()])
     streams.close()
   })
   app.addHook('onClose', () => pool.close())
   if (options.warmPlanning) app.addHook('onListen', () => warmUp(pool))
-  const context: Context = { store, airs, jobs, streams, watcher, webhooks }
+  const context: Context = { store, airs, jobs, streams, watcher, webhooks, fetcher }
   const typed = app as unknown as App
   flightRoutes(typed, context)
   runRoutes(typed, context)
+  sourceRoutes(typed, context)
   noticeRoutes(typed, context)
   rerunRoutes(typed, context)
   trialRoutes(typed, context)

@@ -7,6 +7,7 @@ import {
   type RawServerDefault,
 } from 'fastify'
 import { type z } from 'zod'
+import { type Fetcher } from '../fetching/fetcher.ts'
 import { type Store } from '../store/store.ts'
 import { type Airs } from './airs.ts'
 import { type EventStreams } from './eventStreams.ts'
@@ -22,6 +23,8 @@ export interface Context {
   streams: EventStreams
   watcher: Watcher
   webhooks: Webhooks
+  /** null where no sources are configured */
+  fetcher: Fetcher | null
 }
 
 /** Requests have the types of their schemas; answers are checked against theirs by the tests. */

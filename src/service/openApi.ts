@@ -22,6 +22,7 @@ export const openApiInfo = {
     { name: 'Planning', description: 'How much gas, how sure, and when' },
     { name: 'Jobs', description: 'Calculations that take longer than two seconds' },
     { name: 'Soundings', description: 'Uploaded profiles of the air' },
+    { name: 'Sources', description: 'Where forecasts are fetched from' },
     { name: 'Service', description: 'The service itself' },
   ],
 }

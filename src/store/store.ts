@@ -1,6 +1,7 @@
 import type Database from 'better-sqlite3'
 import { Deliveries } from './deliveries.ts'
 import { Events } from './events.ts'
+import { Fetches } from './fetches.ts'
 import { FirstAnswers } from './firstAnswers.ts'
 import { Flights } from './flights.ts'
 import { GroupCommit } from './groupCommit.ts'
@@ -20,6 +21,7 @@ export class Store {
   readonly watches: Watches
   readonly events: Events
   readonly deliveries: Deliveries
+  readonly fetches: Fetches
   private readonly database: Database.Database
   private readonly group: GroupCommit
 
@@ -35,6 +37,7 @@ export class Store {
     this.watches = new Watches(this.database)
     this.events = new Events(this.database)
     this.deliveries = new Deliveries(this.database)
+    this.fetches = new Fetches(this.database)
   }
 
   /**

@@ -1,10 +1,11 @@
 import { readFileSync } from 'node:fs'
 import { XMLParser } from 'fast-xml-parser'
-import { type Page } from 'playwright-core'
 import { expect, test } from 'vitest'
 import { type Flight } from '../../src/service/schemas/flight.ts'
 import { fixture, flightRequest, steadyWind } from '../service/harness.ts'
+import { hoursFromRelease } from '../service/watching.ts'
 import { expectAccessible, expectNoSidewaysScrolling, inChromium } from './chromium.ts'
+import { tabTo } from './keyboard.ts'
 
 inChromium('book', (room) => {
   test('a stored flight is flown again in a real sounding; the shift is said in words', async () => {
@@ -116,7 +117,7 @@ inChromium('book', (room) => {
     const { page } = await room.open(`#/book/${flight.id}`)
     await page.getByRole('heading', { name: 'By keys (invented)' }).waitFor()
     await page.getByLabel('Fly it again in').waitFor()
-    await tabTo(page, 'Fly again')
+    await tabTo(page, page.getByRole('button', { name: 'Fly again' }))
     await page.keyboard.press('Enter')
     await page.getByText('The new run lands').waitFor()
     expect(await page.getByText('The new run lands').textContent()).toMatch(
@@ -126,10 +127,10 @@ inChromium('book', (room) => {
     await expect.poll(() => page.locator('.map-mark[data-mark="landing"]').count()).toBe(2)
     const read = page.getByRole('radio', { name: 'Read' })
     expect(await read.first().isChecked()).toBe(true)
-    await tabTo(page, 'Read')
+    await tabTo(page, read.first())
     await page.keyboard.press('ArrowDown')
     expect(await read.last().isChecked()).toBe(true)
-    await page.getByRole('heading', { name: /in Standard atmosphere/i }).waitFor()
+    await page.getByRole('heading', { name: /in US Standard Atmosphere/ }).waitFor()
   })
 
   test('the shown run is downloaded in each format', async () => {
@@ -206,6 +207,56 @@ inChromium('book', (room) => {
     expect((await fetch(`${address}/v1/flights/${flight.id}`)).status).toBe(404)
   })
 
+  test('a watched flight is flown again by itself, and the open page says so', async () => {
+    const { address } = room.server
+    const launch = { ...flightRequest().launch, time: hoursFromRelease(0) }
+    const { flight } = await post<{ flight: Flight }>(
+      address,
+      '/v1/flights',
+      flightRequest({ title: 'Watched (invented)', launch }),
+    )
+    const { page } = await room.open(`#/book/${flight.id}`)
+    await page.getByText('Not watched').waitFor()
+    await page.getByLabel('Tell where the landing moves more than, km').fill('20')
+    await page.getByRole('button', { name: 'Watch it' }).click()
+    await page.getByText('Watched: it is flown again').waitFor()
+    const watch = await get<{ tellBeyondM: number }>(address, `/v1/flights/${flight.id}/watch`)
+    expect(watch.tellBeyondM).toBe(20_000)
+
+    const runs = page.getByRole('radio', { name: 'Read' })
+    const told = page.getByRole('list', { name: /^What happened to the prediction/ })
+    // A breeze moves it less than 20 km: flown, not told. A gale is told.
+    const validAt = hoursFromRelease(-4)
+    await uploaded(address, steadyWind(270, 1, { validAt }))
+    await expect.poll(() => runs.count(), { timeout: 15_000 }).toBe(2)
+    expect(await told.count()).toBe(0)
+    await uploaded(address, steadyWind(270, 20, { validAt: hoursFromRelease(-2) }))
+    await expect.poll(() => told.getByRole('listitem').count(), { timeout: 15_000 }).toBe(1)
+    // All of the drift since it was last told, which was at the site: as far as it lands from there.
+    const { latestRun } = await get<Flight>(address, `/v1/flights/${flight.id}`)
+    expect(await told.textContent()).toContain(
+      `more than 20.0 km since it was last told: lands ${Math.round(latestRun.landing.distanceM / 1000)} km further east`,
+    )
+    expect(await runs.count()).toBe(3)
+    await page.getByRole('button', { name: 'Watch it no longer' }).click()
+    await page.getByText('Not watched').waitFor()
+    expect((await fetch(`${address}/v1/flights/${flight.id}/watch`)).status).toBe(404)
+  })
+
+  test('a book opened while the service is away fills in once it is back', async () => {
+    const { page } = await room.open('#/soundings')
+    await page.getByRole('heading', { name: 'Soundings' }).first().waitFor()
+    await page.getByRole('link', { name: 'Book' }).click()
+    const rows = page.getByRole('list', { name: 'Stored flights' })
+    await rows.waitFor()
+    await room.stop()
+    await page.getByLabel('Title contains').fill('team heron')
+    await page.getByRole('alert').getByText('does not answer').waitFor()
+    await room.startAgain()
+    await expect.poll(() => rows.getByRole('listitem').count(), { timeout: 15_000 }).toBe(1)
+    expect(await page.getByRole('alert').getByText('does not answer').count()).toBe(0)
+  })
+
   test.each([
     ['light', 1280],
     ['dark', 1280],
@@ -246,19 +297,6 @@ async function post<Answer>(address: string, path: string, body: object): Promis
 async function uploaded(address: string, sounding: object): Promise<string> {
   const { profiles } = await post<{ profiles: { id: string }[] }>(address, '/v1/profiles', sounding)
   return profiles[0].id
-}
-
-/** Presses Tab until what has the focus is called `name`; from the top of the page. */
-async function tabTo(page: Page, name: string): Promise<void> {
-  await page.evaluate('document.activeElement?.blur()')
-  for (let presses = 0; presses < 60; presses++) {
-    await page.keyboard.press('Tab')
-    const focused = await page.evaluate<string>(
-      `(document.activeElement?.labels?.[0] ?? document.activeElement)?.textContent?.trim() ?? ''`,
-    )
-    if (focused === name) return
-  }
-  throw new Error(`Tab does not reach ${name}`)
 }
 
 /** Latitude and longitude of the last point of a track file, degrees. */

@@ -14,6 +14,7 @@ import { OutcomeForm } from './outcomeForm.tsx'
 import { PlanInShort } from './planInShort.tsx'
 import { RunList } from './runList.tsx'
 import { useShownRuns } from './useShownRuns.ts'
+import { WatchSheet } from './watchSheet.tsx'
 import './book.css'
 
 const Pictures = lazy(() => import('../pictures/pictures.tsx').then((room) => room.Pictures))
@@ -74,6 +75,7 @@ export function FlightView({ flightId }: { flightId: string }) {
               }}
             />
           </section>
+          <WatchSheet flightId={flightId} onEvent={renew} />
           <PlanInShort plan={plan} />
           <OutcomeForm flightId={flightId} outcome={outcome} runs={all} onKept={renew} />
         </div>

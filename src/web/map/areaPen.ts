@@ -55,7 +55,7 @@ export class AreaPen {
     const frame = this.frame()
     const ring = corners.map((corner): Position => frame.toEarth(corner))
     this.put(null)
-    this.done({ type: 'Polygon', coordinates: [unbroken([...ring, ring[0]])] })
+    this.done({ type: 'Polygon', coordinates: [counterclockwise(unbroken([...ring, ring[0]]))] })
   }
 
   /** Whether a key was one of drawing: Enter sets a corner at the map's middle, F ends, Escape drops. */
@@ -87,6 +87,15 @@ export class AreaPen {
             },
     )
   }
+}
+
+/** A ring the way round that outer rings go (RFC 7946, 3.1.6). */
+function counterclockwise(ring: Position[]): Position[] {
+  const twiceArea = ring.slice(1).reduce((sum, [x, y], index) => {
+    const [x0, y0] = ring[index]
+    return sum + x0 * y - x * y0
+  }, 0)
+  return twiceArea < 0 ? ring.reverse() : ring
 }
 
 /** A ring whose longitudes run on past 180°, as a polygon that is not cut there has them. */

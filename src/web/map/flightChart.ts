@@ -1,4 +1,4 @@
-import type { GeoJSON, MultiPolygon } from 'geojson'
+import type { GeoJSON, MultiPolygon, Polygon } from 'geojson'
 import { AttributionControl, type GeoJSONSource, Map as MapView, setWorkerUrl } from 'maplibre-gl'
 import 'maplibre-gl/dist/maplibre-gl.css'
 import workerUrl from 'maplibre-gl/dist/maplibre-gl-worker.mjs?url'
@@ -40,7 +40,7 @@ export class FlightChart {
   private ready = false
   private closed = false
 
-  constructor(box: HTMLElement, props: PicturesProps) {
+  constructor(box: HTMLElement, props: PicturesProps, onAreaDrawn: (polygon: Polygon) => void) {
     this.props = props
     this.frame = frameOf(props)
     this.places = placesOf(props, this.frame)
@@ -66,11 +66,7 @@ export class FlightChart {
     this.furniture = new Furniture(view)
     this.markers = new PlaceMarkers(view)
     this.labels = new Labels(view)
-    this.pen = new AreaPen(
-      view,
-      () => this.frame,
-      (polygon) => this.props.onAreaDrawn?.(polygon),
-    )
+    this.pen = new AreaPen(view, () => this.frame, onAreaDrawn)
     view.once('style.load', () => {
       this.ready = true
       this.draw()

@@ -17,7 +17,9 @@ export function FlightMap(props: PicturesProps) {
 
   useLayoutEffect(() => {
     if (!box.current) return
-    const made = new FlightChart(box.current, latest.current)
+    const made = new FlightChart(box.current, latest.current, (polygon) =>
+      latest.current.onAreaDrawn?.(polygon),
+    )
     chart.current = made
     setPen(made.pen)
     return () => {

@@ -49,7 +49,7 @@ export class Furniture {
         if (
           at === null ||
           at < (meridian ? 52 : 30) ||
-          at > (meridian ? clientWidth - 40 : clientHeight - 34)
+          at > (meridian ? clientWidth - 40 : clientHeight - 50)
         ) {
           return []
         }
