@@ -122,6 +122,28 @@ inChromium('how sure', (room) => {
     expect(await page.getByLabel('Name', { exact: true }).inputValue()).toBe('Marsh (invented)')
   })
 
+  test('an area that is drawn on the map, with keys alone, is one to avoid', async () => {
+    const { page, complaints } = await room.open('#/')
+    await page.getByRole('button', { name: 'Draw an area' }).click()
+    const status = page.locator('.area-drawing [role=status]')
+    await status.waitFor()
+    for (const [corners, key] of [
+      ['1 corner set', 'ArrowRight'],
+      ['2 corners set', 'ArrowDown'],
+      ['3 corners set', 'f'],
+    ]) {
+      await page.keyboard.press('Enter')
+      await expect.poll(() => status.textContent()).toContain(corners)
+      await page.keyboard.press(key)
+    }
+    await page.getByLabel('Name', { exact: true }).waitFor()
+    expect(await page.getByLabel('Name', { exact: true }).inputValue()).toBe('Area 1')
+    expect(await page.getByLabel('Land there?').inputValue()).toBe('avoid')
+    await page.getByRole('button', { name: 'Remove Area 1' }).click()
+    expect(await page.getByLabel('Land there?').count()).toBe(0)
+    expect(complaints).toEqual([])
+  })
+
   test('a long one is a job: it shows how far it is, is stopped, and is worked out again', async () => {
     const { page } = await room.open('#/')
     await ask(page, 'How sure')

@@ -2,7 +2,7 @@ import { useMemo } from 'preact/hooks'
 import uPlot from 'uplot'
 import { type FillAnswer } from '../../service/schemas/fill.ts'
 import { durationWords } from '../distances.ts'
-import { axis, side } from '../pictures/axes.ts'
+import { axis, side, tickText } from '../pictures/axes.ts'
 import { useChart } from '../pictures/chart.ts'
 import { ink, scheme } from '../pictures/ink.ts'
 import { plainNumber, reading, unitOf, unitSystem } from '../readings.ts'
@@ -96,12 +96,17 @@ function usefulRows({ tradeOff, neckLiftG, ...flown }: FillAnswer): Row[] {
   }
   const slowest = Math.min(SLOWEST, 0.9 * wanted.releaseRateMs)
   const fastest = Math.max(FASTEST, 1.1 * wanted.releaseRateMs)
-  return tradeOff
-    .filter(({ releaseRateMs: rate }) => rate >= slowest && rate <= fastest)
-    .filter((row) => Math.abs(row.neckLiftG - neckLiftG) > 1)
-    .concat(wanted)
-    .sort((one, other) => one.neckLiftG - other.neckLiftG)
+  return (
+    tradeOff
+      .filter(({ releaseRateMs: rate }) => rate >= slowest && rate <= fastest)
+      // Two points side by side would bend the drawn line between them.
+      .filter((row) => Math.abs(row.neckLiftG - neckLiftG) > 0.05 * neckLiftG)
+      .concat(wanted)
+      .sort((one, other) => one.neckLiftG - other.neckLiftG)
+  )
 }
+
+const values = (_plot: uPlot, ticks: number[]) => ticks.map(tickText)
 
 interface TradeProps {
   rows: readonly Row[]
@@ -128,8 +133,8 @@ function Trade({ rows, at, label, of }: TradeProps) {
       legend: { show: false },
       scales: { x: { time: false } },
       axes: [
-        axis('Neck lift, kg', { side: side.bottom }),
-        axis(label, { side: side.left, size: 62 }),
+        axis('Neck lift, kg', { side: side.bottom, size: 28, values }),
+        axis(label, { side: side.left, size: 52, values }),
       ],
       series: [
         {},
