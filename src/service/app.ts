@@ -133,7 +133,7 @@ export async function buildApp(
   })
   app.addHook('onClose', () => pool.close())
   if (options.warmPlanning) app.addHook('onListen', () => warmUp(pool))
-  const context: Context = { store, airs, jobs, streams, watcher, webhooks, fetcher }
+  const context: Context = { store, airs, jobs, pool, streams, watcher, webhooks, fetcher }
   const typed = app as unknown as App
   flightRoutes(typed, context)
   runRoutes(typed, context)
