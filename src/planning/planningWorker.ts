@@ -4,6 +4,9 @@ import { LRUCache } from 'lru-cache'
 import { type Column } from '../physics/column.ts'
 import { type FlightPlan } from '../physics/flight.ts'
 import { NotFlyable, type NotFlyableReason } from '../physics/notFlyable.ts'
+import { BadSounding } from '../soundings/badSounding.ts'
+import { type Sounding } from '../soundings/profile.ts'
+import { readSoundings, type ReadOptions } from '../soundings/readSoundings.ts'
 import { columnOf, type AirRecipe } from './airRecipe.ts'
 import { positionsText } from './positionsText.ts'
 import { flyMembers, summarize, type Dispersion } from './dispersion.ts'
@@ -92,6 +95,27 @@ export interface SurveyOrder extends Survey {
 /** Flies one release time. */
 export function survey(order: SurveyOrder): typeof AIR_MISSING | Refused | SurveyedTime {
   return inAir(order.air, (column) => surveyTime(order, column))
+}
+
+export interface ReadOrder {
+  bytes: Uint8Array
+  options: ReadOptions
+}
+
+/** Why bytes hold no sounding to fly in; the error itself does not keep its class between threads. */
+export interface Unread {
+  problems: BadSounding['problems']
+  unparseable: boolean
+}
+
+/** Reads the soundings in some bytes. */
+export function read({ bytes, options }: ReadOrder): Sounding[] | Unread {
+  try {
+    return readSoundings(bytes, options)
+  } catch (error) {
+    if (!(error instanceof BadSounding)) throw error
+    return { problems: error.problems, unparseable: error.unparseable }
+  }
 }
 
 function inAir<Result>(

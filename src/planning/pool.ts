@@ -2,16 +2,21 @@ import { availableParallelism } from 'node:os'
 import { Piscina } from 'piscina'
 import { NotFlyable } from '../physics/notFlyable.ts'
 import { type FlightPlan } from '../physics/flight.ts'
+import { BadSounding } from '../soundings/badSounding.ts'
+import { type Sounding } from '../soundings/profile.ts'
+import { type ReadOptions } from '../soundings/readSoundings.ts'
 import { recipeKey, type AirRecipe } from './airRecipe.ts'
 import { MEMBER_VALUES } from './memberFlights.ts'
 import {
   AIR_MISSING,
   type AirOrder,
   type MemberOrder,
+  type ReadOrder,
   type Refused,
   type Summary,
   type SummaryOrder,
   type SurveyOrder,
+  type Unread,
 } from './planningWorker.ts'
 import { type Region } from './regions.ts'
 import { type Spread } from './spread.ts'
@@ -108,6 +113,17 @@ export class PlanningPool {
       }
     })
     return surveyed
+  }
+
+  /**
+   * Reads the soundings in some bytes, which takes seconds where they are many.
+   * @throws BadSounding where there is none to fly in
+   */
+  async read(bytes: Uint8Array, options: ReadOptions): Promise<Sounding[]> {
+    const order: ReadOrder = { bytes, options }
+    const answer = (await this.started().run(order, { name: 'read' })) as Sounding[] | Unread
+    if (Array.isArray(answer)) return answer
+    throw new BadSounding(answer.unparseable ? 'unparseable' : 'not-flyable', answer.problems)
   }
 
   async close(): Promise<void> {

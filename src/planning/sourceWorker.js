@@ -4,4 +4,4 @@ import { register } from 'tsx/esm/api'
 
 register()
 
-export const { fly, summary, survey } = await import('./planningWorker.ts')
+export const { fly, summary, survey, read } = await import('./planningWorker.ts')

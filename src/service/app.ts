@@ -158,7 +158,17 @@ export async function buildApp(
     airs.close()
   })
   if (options.warmPlanning) app.addHook('onListen', () => warmUp(pool))
-  const context: Context = { store, airs, jobs, fieldFiles, streams, watcher, webhooks, fetcher }
+  const context: Context = {
+    store,
+    airs,
+    jobs,
+    pool,
+    fieldFiles,
+    streams,
+    watcher,
+    webhooks,
+    fetcher,
+  }
   const typed = app as unknown as App
   flightRoutes(typed, context)
   runRoutes(typed, context)

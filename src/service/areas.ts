@@ -1,3 +1,4 @@
+import { cutAtAntimeridian } from '../planning/antimeridian.ts'
 import { type Region } from '../planning/regions.ts'
 import { type Areas } from './schemas/regions.ts'
 import { DEGREE, degrees, round } from './units.ts'
@@ -36,7 +37,7 @@ export function areaFeature(region: Region, properties: Record<string, unknown>)
     properties,
     geometry: {
       type: 'MultiPolygon' as const,
-      coordinates: region.polygons.map((rings) =>
+      coordinates: cutAtAntimeridian(region.polygons).map((rings) =>
         rings.map((ring) =>
           ring.map(([longitude, latitude]) => [
             round(degrees(longitude), 5),

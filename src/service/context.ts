@@ -8,6 +8,7 @@ import {
 } from 'fastify'
 import { type z } from 'zod'
 import { type Fetcher } from '../fetching/fetcher.ts'
+import { type PlanningPool } from '../planning/pool.ts'
 import { type Store } from '../store/store.ts'
 import { type Airs } from './airs.ts'
 import { type EventStreams } from './eventStreams.ts'
@@ -21,6 +22,7 @@ export interface Context {
   store: Store
   airs: Airs
   jobs: JobRunner
+  pool: PlanningPool
   streams: EventStreams
   watcher: Watcher
   webhooks: Webhooks

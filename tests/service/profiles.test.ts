@@ -79,6 +79,31 @@ test('name and time of the query take the place of the content’s', async () =>
   expect(profile).toMatchObject({ name: 'Morning', validAt: '2023-05-22T11:00:00.000Z' })
 })
 
+test('while a large upload is read, others are answered', async () => {
+  const { http } = await startService()
+  const message = fixture('barrow-309052.bufr')
+  const many = Buffer.concat(Array.from({ length: 600 }, () => message)) // some 0.4 MB
+  let reading = true
+  const upload = http
+    .post('/v1/profiles')
+    .set('content-type', 'application/bufr')
+    .send(many)
+    .expect(201)
+    .then((answer) => {
+      reading = false
+      return (answer.body as { profiles: ProfileAnswer[] }).profiles
+    })
+  let answered = 0
+  while (reading) {
+    await http.get('/health').expect(200)
+    answered++
+  }
+  expect(await upload).toHaveLength(600)
+  expect(answered).toBeGreaterThan(3)
+  const junk = Buffer.concat([Buffer.from('BUFR'), Buffer.alloc(400_000, 1)])
+  await http.post('/v1/profiles').set('content-type', 'application/bufr').send(junk).expect(400)
+})
+
 test('a sounding in use stays, an unused one can go', async () => {
   const service = await startService()
   const { id } = await postProfile(service)

@@ -1,3 +1,4 @@
+import { setImmediate } from 'node:timers/promises'
 import { v7 as uuid } from 'uuid'
 import { z } from 'zod'
 import { type SoundingLevel } from '../../physics/sounding.ts'
@@ -5,7 +6,7 @@ import { profileSchema } from '../../soundings/json.ts'
 import { levelsAnswer, summary } from '../../soundings/levelsAnswer.ts'
 import { observedAscent, type ObservedAscent } from '../../soundings/observedAscent.ts'
 import { type Sounding } from '../../soundings/profile.ts'
-import { readSoundings } from '../../soundings/readSoundings.ts'
+import { readSoundings, type ReadOptions } from '../../soundings/readSoundings.ts'
 import { type ProfileRow } from '../../store/profiles.ts'
 import { type App, type Context } from '../context.ts'
 import { answerCreation } from '../creating.ts'
@@ -39,10 +40,16 @@ const UPLOAD_TYPES = [
   'application/octet-stream',
 ]
 
+/** More bytes than this are read by a thread, so that others are answered meanwhile. */
+const MOST_READ_HERE = 200_000
+
+/** Soundings made ready for the store before other requests get a turn. */
+const ROWS_A_TURN = 10
+
 const tags = ['Soundings']
 
 /** Uploaded soundings. They take other bodies than the rest, so register them in a scope of their own. */
-export function profileRoutes(app: App, { store, airs, watcher }: Context): void {
+export function profileRoutes(app: App, { store, airs, watcher, pool }: Context): void {
   app.removeAllContentTypeParsers()
   app.addContentTypeParser(
     UPLOAD_TYPES,
@@ -78,16 +85,25 @@ export function profileRoutes(app: App, { store, airs, watcher }: Context): void
       },
     },
     (request, reply) =>
-      answerCreation(request, reply, store, () => {
+      answerCreation(request, reply, store, async () => {
         const { name, validAt, format } = request.query
         const bytes = request.body
         if (!Buffer.isBuffer(bytes)) throw new Problem(400, 'The body is empty: send a sounding.')
-        const rows = readSoundings(bytes, {
+        const options: ReadOptions = {
           receivedAt: Date.now() / 1000,
           ...(name === undefined ? {} : { name }),
           ...(validAt === undefined ? {} : { validAt: seconds(validAt) }),
           ...(format === undefined ? {} : { format }),
-        }).map(profileRow)
+        }
+        const soundings =
+          bytes.length > MOST_READ_HERE
+            ? await pool.read(bytes, options)
+            : readSoundings(bytes, options)
+        const rows: ProfileRow[] = []
+        for (const sounding of soundings) {
+          rows.push(profileRow(sounding))
+          if (rows.length % ROWS_A_TURN === 0) await setImmediate()
+        }
         const [first] = rows
         return {
           location: rows.length === 1 ? `/v1/profiles/${first.id}` : null,
