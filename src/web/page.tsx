@@ -11,6 +11,7 @@ const FlightView = lazy(() => import('./book/flightView.tsx').then((room) => roo
 const SoundingsView = lazy(() =>
   import('./soundings/soundingsView.tsx').then((room) => room.SoundingsView),
 )
+const FieldsView = lazy(() => import('./fields/fieldsView.tsx').then((room) => room.FieldsView))
 const RunView = lazy(() => import('./pictures/runView.tsx').then((room) => room.RunView))
 const NoticeView = lazy(() => import('./notice/noticeView.tsx').then((room) => room.NoticeView))
 
@@ -18,6 +19,7 @@ const VIEWS = [
   ['/', 'Plan'],
   ['/book', 'Book'],
   ['/soundings', 'Soundings'],
+  ['/forecasts', 'Forecasts'],
 ] as const
 
 /** The flight desk: the frame around every view. */
@@ -48,6 +50,9 @@ export function Page() {
             </Route>
             <Route path="/soundings/:profileId?">
               {({ profileId }) => <SoundingsView chosen={profileId} />}
+            </Route>
+            <Route path="/forecasts/:fieldId?">
+              {({ fieldId }) => <FieldsView chosen={fieldId} />}
             </Route>
             <Route path="/runs/:runId">{({ runId }) => <RunView runId={runId} />}</Route>
             <Route path="/notice/:runId">{({ runId }) => <NoticeView runId={runId} />}</Route>
