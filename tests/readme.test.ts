@@ -22,7 +22,7 @@ test.skipIf(missing.length > 0 && !process.env.CI)(
   { timeout: 60_000 },
   async () => {
     expect(missing).toEqual([])
-    expect(blocks.map(({ kind }) => kind)).toEqual(['sh', 'sh', 'python', 'sh', 'sh'])
+    expect(blocks.map(({ kind }) => kind)).toEqual(['sh', 'sh', 'python', 'sh', 'sh', 'sh'])
     const cwd = mkdtempSync(join(tmpdir(), 'driftbook-readme-'))
     const server = await startServer({ DATABASE_FILE: join(cwd, 'a.sqlite') })
     onTestFinished(() => end(server, 'SIGTERM'))
@@ -37,7 +37,7 @@ test.skipIf(missing.length > 0 && !process.env.CI)(
       }
     }
 
-    const [flight, profile, station, fill] = answers
+    const [flight, profile, station, watch, fill] = answers
     expect(JSON.parse(flight)).toMatchObject({
       flight: { title: 'Larkfell ozone 7 (invented)' },
       run: { shift: null, air: { kind: 'standard' } },
@@ -52,6 +52,9 @@ test.skipIf(missing.length > 0 && !process.env.CI)(
     expect(Math.abs(Number(bearing) - 90)).toBeLessThan(20)
     expect(station).toContain('local regulation')
     expect(readFileSync(join(cwd, 'track.csv'), 'utf8')).toMatch(/^elapsedS,time,latitudeDeg/)
+    // The watch as it was set, then the events so far: every run of the flight is one.
+    expect(watch).toContain('"tellBeyondM":5000')
+    expect(watch.match(/"kind":"run-stored"/g)?.length ?? 0).toBeGreaterThanOrEqual(3)
     expect(JSON.parse(fill)).toMatchObject({ ascent: { releaseRateMs: 5 } })
   },
 )

@@ -6,9 +6,12 @@ export function distanceWords(metres: number): string {
   return reading('distance', metres, metres < 20_000 ? 1 : 0)
 }
 
+/** Nearer than this, m, a place has no direction from the site. */
+export const AT_THE_SITE = 50
+
 /** Where something lies, seen from the site: "168 km east". */
 export function fromSite(metres: number, bearingDeg: number): string {
-  if (metres < 50) return 'at the site'
+  if (metres < AT_THE_SITE) return 'at the site'
   return `${distanceWords(metres)} ${compassPoint(bearingDeg)}`
 }
 

@@ -7,7 +7,7 @@ inChromium('forecasts', (room) => {
   test('a file is sent, told about and drawn over a flight’s site; then deleted', async () => {
     const { page, foreign, complaints } = await room.open('#/forecasts')
     await page.getByText('No forecast is stored yet.').waitFor()
-    await page.getByLabel('Choose a GRIB file').setInputFiles(`${FIELDS}packings-globe.grib2`)
+    await page.getByLabel('Choose a GRIB file').setInputFiles(`${FIELDS}gfs-500-250hPa.grib2`)
     const sheet = page.getByRole('article')
     await sheet.getByRole('img', { name: /all round the earth/ }).waitFor({ timeout: 30_000 })
     expect(await sheet.textContent()).toContain('Run of')

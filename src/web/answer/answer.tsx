@@ -1,6 +1,6 @@
 import { type ComponentChildren } from 'preact'
 import { type Run, type Trial } from '../../service/schemas/run.ts'
-import { durationWords, fromSite } from '../distances.ts'
+import { AT_THE_SITE, durationWords, fromSite } from '../distances.ts'
 import { localClock, utc } from '../parts/moment.ts'
 import { plainNumber, reading } from '../readings.ts'
 import { Cautions } from './cautions.tsx'
@@ -19,7 +19,9 @@ export function Answer({ run }: { run: Run | Trial }) {
           {utc(burst.time)} · {localClock(burst.time)}
         </Head>
         <Head name="Lands" value={fromSite(landing.distanceM, landing.bearingDeg)}>
-          bearing {String(Math.round(landing.bearingDeg) % 360).padStart(3, '0')}° from the site
+          {landing.distanceM < AT_THE_SITE
+            ? 'as far as it can be told'
+            : `bearing ${String(Math.round(landing.bearingDeg) % 360).padStart(3, '0')}° from the site`}
         </Head>
         <Head name="On the ground" value={durationWords(landing.elapsedS)}>
           after release: {utc(landing.time)} · {localClock(landing.time)}

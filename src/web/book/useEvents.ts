@@ -26,12 +26,13 @@ export function useEvents(flightId: string, live: boolean, onEvent: () => void):
     }
     read()
     const source = live ? new EventSource(path) : null
-    for (const kind of KINDS) {
-      source?.addEventListener(kind, () => {
-        read()
-        told.current()
-      })
+    const renew = () => {
+      read()
+      told.current()
     }
+    // What happened between the first reading and the open stream is told by neither: read again then.
+    source?.addEventListener('open', renew)
+    for (const kind of KINDS) source?.addEventListener(kind, renew)
     return () => {
       stop.abort()
       source?.close()

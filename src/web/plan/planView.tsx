@@ -51,7 +51,6 @@ export function PlanView() {
               <Answer run={trial} />
             </section>
             <StoreFlight />
-            <Questions />
             <Suspense fallback={<p class="waiting">Drawing …</p>}>
               <Pictures
                 runs={runs}
@@ -63,6 +62,7 @@ export function PlanView() {
                 }}
               />
             </Suspense>
+            <Questions />
             <p class="glance" aria-hidden="true">
               <span>bursts {reading('height', trial.burst.altitudeM)}</span>
               <span>lands {fromSite(trial.landing.distanceM, trial.landing.bearingDeg)}</span>
