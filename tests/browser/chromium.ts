@@ -109,12 +109,13 @@ export async function expectAccessible(page: Page): Promise<void> {
   expect(found).toEqual([])
 }
 
-/** Fails where the page must be scrolled sideways. */
+/** Fails where the page must be scrolled sideways, once pictures have found their width. */
 export async function expectNoSidewaysScrolling(page: Page): Promise<void> {
-  const [content, window] = await page.evaluate<[number, number]>(
-    '[document.documentElement.scrollWidth, document.documentElement.clientWidth]',
-  )
-  expect(content).toBeLessThanOrEqual(window)
+  const overhang = () =>
+    page.evaluate<number>(
+      'document.documentElement.scrollWidth - document.documentElement.clientWidth',
+    )
+  await expect.poll(overhang, { timeout: 5000 }).toBeLessThanOrEqual(0)
 }
 
 interface Axe {
