@@ -1,4 +1,5 @@
 import { useState } from 'preact/hooks'
+import { useDropping } from '../parts/useDropping.ts'
 import { type FieldAnswer } from '../../service/schemas/field.ts'
 import { uploadField } from './sendField.ts'
 
@@ -9,7 +10,6 @@ type Sending =
 /** Takes a forecast file, chosen or dropped, and tells how far it has got. */
 export function FieldUpload({ onUploaded }: { onUploaded: (field: FieldAnswer) => void }) {
   const [sending, setSending] = useState<Sending | null>(null)
-  const [over, setOver] = useState(false)
 
   const send = async (file: File | undefined) => {
     if (!file) return
@@ -27,23 +27,10 @@ export function FieldUpload({ onUploaded }: { onUploaded: (field: FieldAnswer) =
     }
   }
 
+  const { over, handlers } = useDropping(([file]) => void send(file))
+
   return (
-    <section
-      class={over ? 'upload over' : 'upload'}
-      aria-labelledby="upload-heading"
-      onDragOver={(event) => {
-        event.preventDefault()
-        setOver(true)
-      }}
-      onDragLeave={() => {
-        setOver(false)
-      }}
-      onDrop={(event) => {
-        event.preventDefault()
-        setOver(false)
-        void send(event.dataTransfer?.files[0])
-      }}
-    >
+    <section class={over ? 'upload over' : 'upload'} aria-labelledby="upload-heading" {...handlers}>
       <h2 id="upload-heading">Add a forecast</h2>
       <label class="file">
         <span>Choose a GRIB file, or drop it here</span>

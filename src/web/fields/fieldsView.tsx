@@ -1,41 +1,16 @@
-import { useEffect, useState } from 'preact/hooks'
 import { Link, useLocation } from 'wouter-preact'
 import { type FieldAnswer } from '../../service/schemas/field.ts'
-import { call } from '../api/client.ts'
+import { usePages } from '../api/usePages.ts'
 import { utc } from '../soundings/words.ts'
 import { FieldSheet } from './fieldSheet.tsx'
 import { FieldUpload } from './fieldUpload.tsx'
 import '../soundings/soundings.css'
 import './fields.css'
 
-interface Page {
-  items: FieldAnswer[]
-  nextCursor: string | null
-}
-
-/** How many forecasts a page of the list has. */
-const PAGE = 20
-
 /** The stored forecasts: added, looked at, deleted. */
 export function FieldsView({ chosen }: { chosen?: string | undefined }) {
-  const [page, setPage] = useState<Page | null>(null)
-  const [trouble, setTrouble] = useState<string | null>(null)
+  const { page, trouble, load } = usePages<FieldAnswer>('/v1/fields')
   const [, go] = useLocation()
-
-  const load = async (cursor: string | null, before: FieldAnswer[]) => {
-    try {
-      const more = cursor === null ? '' : `&cursor=${encodeURIComponent(cursor)}`
-      const next = await call<Page>('GET', `/v1/fields?limit=${PAGE}${more}`)
-      setPage({
-        items: [...before, ...next.items],
-        nextCursor: next.nextCursor,
-      })
-      setTrouble(null)
-    } catch (error) {
-      setTrouble(error instanceof Error ? error.message : String(error))
-    }
-  }
-  useEffect(() => void load(null, []), [])
 
   return (
     <div class="soundings-view">

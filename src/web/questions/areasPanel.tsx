@@ -1,4 +1,5 @@
 import { useState } from 'preact/hooks'
+import { useDropping } from '../parts/useDropping.ts'
 import { Choice } from '../plan/choice.tsx'
 import { type ShownArea } from '../pictures/shownArea.ts'
 import { addArea, areas } from './areas.ts'
@@ -8,7 +9,6 @@ import { readAreas } from './readAreas.ts'
 export function AreasPanel() {
   const [text, setText] = useState('')
   const [said, setSaid] = useState<{ fault: boolean; words: string }>({ fault: false, words: '' })
-  const [over, setOver] = useState(false)
 
   const take = (source: string) => {
     try {
@@ -27,25 +27,13 @@ export function AreasPanel() {
     for (const file of files) take(await file.text())
   }
 
+  const { over, handlers } = useDropping((files) => void takeFiles(files))
+
   return (
-    <div
-      class={over ? 'stack over' : 'stack'}
-      onDragOver={(event) => {
-        event.preventDefault()
-        setOver(true)
-      }}
-      onDragLeave={() => {
-        setOver(false)
-      }}
-      onDrop={(event) => {
-        event.preventDefault()
-        setOver(false)
-        void takeFiles(event.dataTransfer?.files ?? [])
-      }}
-    >
+    <div class={over ? 'stack over' : 'stack'} {...handlers}>
       <p>
         “How sure” tells the share of landings in each; “When” can be kept to them. Draw one on the
-        map below, drop a GeoJSON file here, or paste its text.
+        map above, drop a GeoJSON file here, or paste its text.
       </p>
       {areas.value.map((area, index) => (
         <AreaRow key={index} area={area} index={index} />

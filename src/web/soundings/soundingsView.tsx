@@ -1,37 +1,15 @@
-import { useEffect, useState } from 'preact/hooks'
 import { useLocation } from 'wouter-preact'
 import { type ProfileAnswer } from '../../service/schemas/profile.ts'
-import { call } from '../api/client.ts'
+import { usePages } from '../api/usePages.ts'
 import { SoundingList } from './soundingList.tsx'
 import { SoundingSheet } from './soundingSheet.tsx'
 import { UploadForm } from './uploadForm.tsx'
 import './soundings.css'
 
-interface Page {
-  items: ProfileAnswer[]
-  nextCursor: string | null
-}
-
-/** How many soundings a page of the list has. */
-const PAGE = 20
-
 /** The stored soundings: added, looked at, deleted. */
 export function SoundingsView({ chosen }: { chosen?: string | undefined }) {
-  const [page, setPage] = useState<Page | null>(null)
-  const [trouble, setTrouble] = useState<string | null>(null)
+  const { page, trouble, load } = usePages<ProfileAnswer>('/v1/profiles')
   const [, go] = useLocation()
-
-  const load = async (cursor: string | null, before: ProfileAnswer[]) => {
-    try {
-      const more = cursor === null ? '' : `&cursor=${encodeURIComponent(cursor)}`
-      const next = await call<Page>('GET', `/v1/profiles?limit=${PAGE}${more}`)
-      setPage({ items: [...before, ...next.items], nextCursor: next.nextCursor })
-      setTrouble(null)
-    } catch (error) {
-      setTrouble(error instanceof Error ? error.message : String(error))
-    }
-  }
-  useEffect(() => void load(null, []), [])
 
   return (
     <div class="soundings-view">

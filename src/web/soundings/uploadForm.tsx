@@ -1,4 +1,5 @@
 import { useState } from 'preact/hooks'
+import { useDropping } from '../parts/useDropping.ts'
 import { type ProfileAnswer } from '../../service/schemas/profile.ts'
 import { ServiceProblem } from '../api/client.ts'
 import { uploadSoundings, type UploadWords } from './upload.ts'
@@ -17,7 +18,6 @@ interface UploadFormProps {
 export function UploadForm({ onUploaded }: UploadFormProps) {
   const [words, setWords] = useState<UploadWords>({ name: '', validAt: '' })
   const [outcomes, setOutcomes] = useState<Outcome[]>([])
-  const [over, setOver] = useState(false)
 
   const send = async (files: readonly File[]) => {
     setOutcomes(files.map(({ name }) => ({ kind: 'reading', file: name })))
@@ -28,23 +28,10 @@ export function UploadForm({ onUploaded }: UploadFormProps) {
     }
   }
 
+  const { over, handlers } = useDropping((files) => void send(files))
+
   return (
-    <section
-      class={over ? 'upload over' : 'upload'}
-      aria-labelledby="upload-heading"
-      onDragOver={(event) => {
-        event.preventDefault()
-        setOver(true)
-      }}
-      onDragLeave={() => {
-        setOver(false)
-      }}
-      onDrop={(event) => {
-        event.preventDefault()
-        setOver(false)
-        void send([...(event.dataTransfer?.files ?? [])])
-      }}
-    >
+    <section class={over ? 'upload over' : 'upload'} aria-labelledby="upload-heading" {...handlers}>
       <h2 id="upload-heading">Add soundings</h2>
       <label class="file">
         <span>Choose a file, or drop it here</span>
